@@ -7,4 +7,9 @@ export const measurements = {
     `Reading this file took longer than ${seconds} seconds, so it was stopped and nothing was stored. Split it into single sweeps.`,
   readingTooMuchMemory:
     'Reading this file needs more memory than one file may take, so it was stopped and nothing was stored. Split it into single sweeps.',
+  fileTooLarge: (megabytes: number) =>
+    `A text file may hold up to ${megabytes} MB. Export fewer points, or split the file into single sweeps.`,
+  fileMissing: 'The upload brings no file. Send it as the part named "file".',
+  sweepMissing: 'The upload says nothing about the sweep. Send its name and batch as JSON in the part named "sweep".',
+  uploadBroken: 'The upload ended early or is not a form with one file. Nothing was stored. Send it again.',
 } as const;
