@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { OutputSchema } from '../output.js';
-import { pageOf, rowShape } from './paging.js';
+import { PageQuerySchema, pageOf, rowShape } from './paging.js';
 
 /**
  * What one run of a calculator produced. Its identity is everything that went in: anyone can run it again and must
@@ -46,4 +46,10 @@ export const ResultSchema = z.object({
 });
 export type Result = z.infer<typeof ResultSchema>;
 export const ResultPageSchema = pageOf(ResultSchema);
+export const ResultQuerySchema = PageQuerySchema.extend({
+  sheetId: z.uuid().optional(),
+  itemId: z.uuid().optional(),
+  sweepId: z.uuid().optional(), // results that took this sweep in any role
+});
+export type ResultQuery = z.infer<typeof ResultQuerySchema>;
 export const UpdateResultSchema = z.strictObject({ name: z.string().trim().max(120) });

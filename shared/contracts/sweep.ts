@@ -91,6 +91,14 @@ export const SweepSchema = z.object({
 export type SweepRow = z.infer<typeof SweepSchema>;
 export const SweepPageSchema = pageOf(SweepSchema);
 
+export const SweepRevisionPageSchema = pageOf(SweepRevisionSchema);
+
+/** What an accepted upload answers; a file that is in the project already answers 409 `already-here` with `extra`. */
+export const UploadedSweepSchema = z.object({ sweep: SweepSchema });
+export const AlreadyHereSchema = z.object({ sweepId: z.uuid(), name: z.string() });
+/** Undo and restore of a batch: the sweeps that were put into the bin or taken out of it. */
+export const BatchAnswerSchema = z.object({ batchId: z.uuid(), sweepIds: z.array(z.uuid()) });
+
 export const RereadSchema = z.strictObject({ reading: ReadingOverridesSchema });
 export const KnownSourcesSchema = z.strictObject({ sha256: z.array(z.string().length(64)).min(1).max(500) });
 export const KnownSourcesAnswerSchema = z.object({
