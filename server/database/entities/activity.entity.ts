@@ -14,7 +14,7 @@ export type Change = (typeof CHANGES)[number];
 export class ActivityEntity {
   @PrimaryColumn('uuid') chainId!: string;
   @PrimaryColumn('int') sequence!: number; // 1, 2, 3 … within the chain, in the order of commits
-  @Column('timestamptz', { precision: 3 }) at!: Date;
+  @Column({ type: 'timestamptz', precision: 3 }) at!: Date;
   @Column('uuid', { nullable: true }) actorId!: string | null; // null: the product itself
   @Column('text') action!: string; // noun:verb
   @Column('text') entity!: string;

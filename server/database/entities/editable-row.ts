@@ -14,5 +14,5 @@ export abstract class VersionedRow extends KeptRow {
 
 /** A row that can also lie in the bin, for 90 days. */
 export abstract class EditableRow extends VersionedRow {
-  @Column('timestamptz', { precision: 3, nullable: true }) deletedAt!: Date | null;
+  @Column({ type: 'timestamptz', precision: 3, nullable: true }) deletedAt!: Date | null;
 }

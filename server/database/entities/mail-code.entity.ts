@@ -12,6 +12,6 @@ export class MailCodeEntity extends KeptRow {
   @ManyToOne(() => PersonEntity, { onDelete: 'CASCADE' }) @JoinColumn() readonly person?: Relation<PersonEntity>;
   @Column('text') purpose!: 'verify' | 'reset';
   @Column('char', { length: 64 }) codeSha256!: string;
-  @Column('timestamptz', { precision: 3 }) expiresAt!: Date;
-  @Column('timestamptz', { precision: 3, nullable: true }) usedAt!: Date | null;
+  @Column({ type: 'timestamptz', precision: 3 }) expiresAt!: Date;
+  @Column({ type: 'timestamptz', precision: 3, nullable: true }) usedAt!: Date | null;
 }

@@ -14,5 +14,5 @@ export class NoticeEntity extends KeptRow {
   @ManyToOne(() => TeamEntity, { onDelete: 'CASCADE' }) @JoinColumn() readonly team?: Relation<TeamEntity> | null;
   @Column('text') kind!: string;
   @Column('jsonb') subject!: Record<string, unknown>;
-  @Column('timestamptz', { precision: 3, nullable: true }) readAt!: Date | null;
+  @Column({ type: 'timestamptz', precision: 3, nullable: true }) readAt!: Date | null;
 }

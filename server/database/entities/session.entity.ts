@@ -14,8 +14,8 @@ export class SessionEntity extends KeptRow {
   @Column('text') device!: string; // from the user agent, in words
   @Column('text') salt!: string;
   @Column('int') generation!: number; // of the newest refresh token
-  @Column('timestamptz', { precision: 3 }) rotatedAt!: Date;
-  @Column('timestamptz', { precision: 3 }) lastUsedAt!: Date;
-  @Column('timestamptz', { precision: 3 }) expiresAt!: Date;
-  @Column('timestamptz', { precision: 3, nullable: true }) endedAt!: Date | null;
+  @Column({ type: 'timestamptz', precision: 3 }) rotatedAt!: Date;
+  @Column({ type: 'timestamptz', precision: 3 }) lastUsedAt!: Date;
+  @Column({ type: 'timestamptz', precision: 3 }) expiresAt!: Date;
+  @Column({ type: 'timestamptz', precision: 3, nullable: true }) endedAt!: Date | null;
 }
