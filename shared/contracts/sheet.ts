@@ -30,8 +30,11 @@ export const SheetContentSchema = z.strictObject({
   frequencyRangeHz: RangeSchema.nullable().default(null), // null: all of it
   magnitudeRangeOhm: RangeSchema.nullable().default(null),
   phaseRangeDeg: RangeSchema.nullable().default(null),
+  realRangeOhm: RangeSchema.nullable().default(null),
+  imaginaryRangeOhm: RangeSchema.nullable().default(null),
   frequencyScale: z.enum(['log', 'linear']).default('log'),
   magnitudeScale: z.enum(['log', 'linear']).default('log'),
+  isPhaseUnwrapped: z.boolean().default(false), // only when asked
   cursorAHz: z.number().positive().nullable().default(null),
   cursorBHz: z.number().positive().nullable().default(null),
   cards: z.array(CardSchema).max(40).default([]),
