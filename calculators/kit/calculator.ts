@@ -15,6 +15,7 @@ export interface RoleKey {
   readonly label: string;
   readonly unit: string; // SI
   readonly required: boolean;
+  readonly allowsZero?: boolean; // a number has to be above 0 unless this is set
 }
 
 /** A figure a calculator can return: what stands in its help, its tables and its exports. */
