@@ -8,6 +8,7 @@ import { setTimeout as sleep } from 'node:timers/promises';
 
 /** A fault that a person can act on: its message is printed as it is, without a stack trace. */
 export class SetupError extends Error {
+  /** @override */
   name = 'SetupError';
 }
 
