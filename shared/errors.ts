@@ -60,6 +60,7 @@ export const ERROR_STATUS = {
   'not-found': 404,
   'already-here': 409, // the same source file is in this project already
   'version-conflict': 409, // detail: both versions
+  'version-missing': 428, // an edit has to name the version it started from: If-Match
   'name-taken': 409,
   'too-large': 413,
   'too-many-tries': 429,
