@@ -13,12 +13,15 @@ function freeLineNumber(content: SheetContent): number {
 
 export const draw =
   (...sweepIds: readonly string[]): SheetEdit =>
-  (content) =>
-    sweepIds.reduce((current, sweepId) => {
-      if (current.drawn.some((line) => line.sweepId === sweepId)) return current;
+  (content) => {
+    let current = content;
+    for (const sweepId of sweepIds) {
+      if (current.drawn.some((line) => line.sweepId === sweepId)) continue;
       const line = { sweepId, lineNumber: freeLineNumber(current), isReference: false };
-      return { ...current, drawn: [...current.drawn, line] };
-    }, content);
+      current = { ...current, drawn: [...current.drawn, line] };
+    }
+    return current;
+  };
 
 export const putAway =
   (...sweepIds: readonly string[]): SheetEdit =>
