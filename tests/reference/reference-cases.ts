@@ -12,7 +12,7 @@ export interface ExpectedFigure {
 }
 export interface ReferenceCase {
   readonly id: string;
-  readonly files: readonly { name: string; role?: string; declared_mass?: number }[];
+  readonly files: readonly { name: string; declared_mass?: number }[]; // their `role` is what they are, not what was said
   readonly model: { coil: string; creep: string | null };
   readonly inputs?: { piston_diameter: number; net_volume?: number };
   readonly true: Readonly<Record<string, number>>;
@@ -28,7 +28,9 @@ export function referenceCases(folder: string): readonly ReferenceCase[] {
 
 /** A sweep of the reference set: plain CSV, either real and imaginary part or magnitude and phase in degrees. */
 export function referenceSweep(folder: string, file: string): Sweep {
-  const [header = '', ...lines] = readFileSync(join(fixtures, folder, file), 'utf8').trimEnd().split('\n');
+  const [header = '', ...lines] = readFileSync(join(fixtures, folder, file), 'utf8')
+    .trimEnd()
+    .split('\n');
   const rows = lines.map((line) => line.split(',').map(Number));
   const column = (index: number): Float64Array => Float64Array.from(rows, (row) => row[index] ?? Number.NaN);
   const [frequencyHz, second, third] = [column(0), column(1), column(2)];
@@ -43,13 +45,14 @@ export function referenceSweep(folder: string, file: string): Sweep {
   };
 }
 
-/** The inputs of driver-fit that a person would give for this case. */
+/** The inputs of driver-fit as the person of this case declared them (two cases declare them the wrong way round). */
 export function referenceInputs(folder: string, { files, inputs }: ReferenceCase): RoleInputs {
   const roles: Record<string, RoleInput[]> = {};
-  for (const { name, role = 'free-air', declared_mass: mass } of files) {
+  for (const { name, declared_mass: mass } of files) {
+    const role = /-mass\d\.csv$/.test(name) ? 'added-mass' : name.endsWith('-box.csv') ? 'known-volume' : 'free-air';
     const keys: Record<string, number> = {};
-    if (role === 'added-mass' && mass !== undefined) keys.mass = mass;
-    if (role === 'known-volume' && inputs?.net_volume !== undefined) keys.volume = inputs.net_volume;
+    if (role === 'added-mass' && mass) keys.mass = mass;
+    if (role === 'known-volume' && inputs?.net_volume) keys.volume = inputs.net_volume;
     roles[role] = [...(roles[role] ?? []), { sweep: referenceSweep(folder, name), keys }];
   }
   return roles;

@@ -1,0 +1,308 @@
+import { InputError } from '../../shared/errors.js';
+import type { FitStatus } from '../../shared/output.js';
+import { DampedStep } from './damped-step.js';
+import { describeFit } from './fit-description.js';
+import type {
+  FitParameter,
+  LeastSquaresFit,
+  LeastSquaresOptions,
+  LeastSquaresProblem,
+} from './least-squares-problem.js';
+import { LINEAR_LOSS, type Loss } from './losses.js';
+import { type Evaluation, FusedEvaluation, ResidualEvaluation } from './problem-evaluation.js';
+
+const MOST_REFUSALS = 40; // in one iteration
+const LOOSE_OFFSET = 1e-3; // Bates and Watts' own limit: the confidence region is known to 0.1 % of its size
+const MOST_POLISHING = 12;
+const COST_ROUNDING = 1e-8; // relative; far above the rounding of any sum of squares met in practice
+const LOG_STEP = 1.5; // largest change of a logarithm in one iteration: a factor of 4.5
+
+/**
+ * Minimises ½Σρ(r²) over the parameters, from `start` (natural values), by Levenberg–Marquardt with diagonal scaling
+ * inside a box: a parameter on a bound whose gradient points outwards rests there, and each component of a step has a
+ * limit of its own. Stops on the relative offset, not on the change of the sum of squares. Deterministic.
+ * Sources: D. W. Marquardt, "An Algorithm for Least-Squares Estimation of Nonlinear Parameters", J. SIAM 11, 1963;
+ * D. M. Bates, D. G. Watts, "A Relative Offset Orthogonality Convergence Criterion for Nonlinear Least Squares",
+ * Technometrics 23, 1981 (both from memory).
+ * Throws InputError('bad-setting') on arguments that make no problem, nothing on numeric trouble.
+ */
+export function leastSquares(
+  problem: LeastSquaresProblem,
+  start: ArrayLike<number>,
+  options: LeastSquaresOptions = {},
+): LeastSquaresFit {
+  checkArguments(problem, start, options);
+  const loss: Loss = { kind: options.loss ?? LINEAR_LOSS.kind, scale: options.lossScale ?? LINEAR_LOSS.scale };
+  const evaluation = problem.normal
+    ? new FusedEvaluation(problem.normal.bind(problem), problem.parameters.length, loss)
+    : new ResidualEvaluation(problem, loss);
+  const iteration = new Iteration(problem, evaluation, start, options);
+  const status = iteration.run();
+  return describeFit(problem, evaluation, options, {
+    values: iteration.values,
+    status,
+    relativeOffset: iteration.offset,
+    iterations: iteration.iterations,
+    resting: iteration.resting(),
+  });
+}
+
+class Iteration {
+  readonly values: Float64Array;
+  iterations = 0;
+  offset = Number.POSITIVE_INFINITY;
+  private readonly p: number;
+  private readonly parameters: readonly FitParameter[];
+  private readonly trial: Float64Array;
+  private readonly step: Float64Array;
+  private readonly low: Float64Array;
+  private readonly high: Float64Array;
+  private readonly toLower: Float64Array; // distance to the bounds, infinite where there is none
+  private readonly toUpper: Float64Array;
+  private readonly openLow: Float64Array; // no limits, for the undamped step
+  private readonly openHigh: Float64Array;
+  private readonly damping: Float64Array;
+  private readonly active: Uint8Array;
+  private readonly solver: DampedStep;
+  private readonly activeRows: number;
+  private readonly goal: number;
+  private lambda = 1e-3;
+  private growth = 4;
+
+  constructor(
+    problem: LeastSquaresProblem,
+    private readonly evaluation: Evaluation,
+    start: ArrayLike<number>,
+    private readonly options: LeastSquaresOptions,
+  ) {
+    this.parameters = problem.parameters;
+    this.p = this.parameters.length;
+    this.values = Float64Array.from(start, (value, k) => clampTo(this.parameters[k]!, value));
+    this.trial = new Float64Array(this.p);
+    this.step = new Float64Array(this.p);
+    this.low = new Float64Array(this.p);
+    this.high = new Float64Array(this.p);
+    this.openLow = new Float64Array(this.p).fill(Number.NEGATIVE_INFINITY);
+    this.openHigh = new Float64Array(this.p).fill(Number.POSITIVE_INFINITY);
+    this.toLower = this.openLow.slice();
+    this.toUpper = this.openHigh.slice();
+    this.damping = new Float64Array(this.p);
+    this.active = new Uint8Array(this.p);
+    this.solver = new DampedStep(this.p);
+    this.activeRows = problem.activeCount ?? problem.residualCount;
+    this.goal = options.relativeOffset ?? 1e-6;
+  }
+
+  run(): FitStatus {
+    const cost = this.evaluation.tryAt(this.values);
+    if (!Number.isFinite(cost)) return 'stalled';
+    this.evaluation.adopt(this.values);
+    const most = this.options.maxIterations ?? 100;
+    for (; ; this.iterations++) {
+      this.options.checkpoint?.();
+      const arrived = this.hasArrived();
+      if (arrived) {
+        if (this.evaluation.sharpen(this.values)) continue;
+        return this.finalStatus('converged');
+      }
+      if (this.iterations >= most) return 'iteration-limit';
+      if (!this.advance()) {
+        if (this.evaluation.sharpen(this.values)) continue;
+        this.polish();
+        return this.offset < LOOSE_OFFSET ? this.finalStatus('converged') : 'stalled';
+      }
+    }
+  }
+
+  /** 1 where a parameter may move: it has influence and does not press against a bound. */
+  private chooseActive(): void {
+    const { gradient, hessian } = this.evaluation.sums;
+    for (let k = 0; k < this.p; k++) {
+      const parameter = this.parameters[k]!;
+      const value = this.values[k]!;
+      const slope = gradient[k]!;
+      const pressesLow = parameter.lower !== undefined && value <= parameter.lower && slope > 0;
+      const pressesHigh = parameter.upper !== undefined && value >= parameter.upper && slope < 0;
+      const curvature = hessian[k * this.p + k]!;
+      this.active[k] = pressesLow || pressesHigh || !(curvature > 0) ? 0 : 1;
+      const floor = parameter.logScaled ? 0 : this.damping[k]!; // Moré: never forget how steep it was
+      this.damping[k] = Math.max(curvature, floor) || 1;
+    }
+  }
+
+  /**
+   * The relative offset: length of the residual's part in the tangent plane over the length of the rest, each per
+   * degree of freedom. Also arrived where the undamped step is below the rounding of the parameters, or the residual
+   * vanishes.
+   */
+  private hasArrived(): boolean {
+    this.chooseActive();
+    const { sums, factor } = this.evaluation;
+    if (!(sums.cost > 0)) {
+      this.offset = 0;
+      return true;
+    }
+    const free = this.active.reduce((total, flag) => total + flag, 0);
+    if (free === 0) {
+      this.offset = 0;
+      return true;
+    }
+    const { step, solver, damping } = this;
+    let decrease = solver.solve(sums, factor, this.active, 0, damping, this.openLow, this.openHigh, step);
+    if (!(decrease >= 0))
+      decrease = solver.solve(sums, factor, this.active, 1e-9, damping, this.openLow, this.openHigh, step);
+    if (!(decrease >= 0)) return false;
+    const rest = Math.max(2 * sums.cost - 2 * decrease, 0);
+    const restDof = Math.max(this.activeRows - free, 1);
+    this.offset = Math.sqrt((2 * decrease) / free / (rest / restDof));
+    if (this.offset < this.goal) return true;
+    for (let k = 0; k < this.p; k++) {
+      const size = this.parameters[k]!.logScaled ? 1 : Math.abs(this.values[k]!);
+      if (Math.abs(step[k]!) > 64 * Number.EPSILON * size) return false;
+    }
+    return true;
+  }
+
+  /** One accepted step; false when none is found. */
+  private advance(): boolean {
+    const { evaluation, step, solver } = this;
+    this.setBox();
+    for (let refusals = 0; refusals < MOST_REFUSALS; refusals++) {
+      const { sums } = evaluation;
+      const predicted = solver.solve(
+        sums,
+        evaluation.factor,
+        this.active,
+        this.lambda,
+        this.damping,
+        this.low,
+        this.high,
+        step,
+      );
+      if (predicted > 0 && this.moveTrial()) {
+        if (predicted < 16 * Number.EPSILON * sums.cost) return false;
+        const gained = sums.cost - evaluation.tryAt(this.trial);
+        if (gained >= 1e-4 * predicted) {
+          this.accept(gained, predicted);
+          return true;
+        }
+      }
+      this.lambda = Math.max(this.lambda, 1e-6) * this.growth;
+      this.growth *= 2;
+    }
+    return false;
+  }
+
+  /**
+   * Close to the end the cost no longer tells a better point from a worse one: its rounding is larger than what is left
+   * to gain. The gradient still does, so undamped steps go on while each shortens the offset.
+   */
+  private polish(): void {
+    const { evaluation, step } = this;
+    for (let round = 0; round < MOST_POLISHING && this.offset < LOOSE_OFFSET; round++) {
+      const previous = { offset: this.offset, cost: evaluation.sums.cost, values: this.values.slice() };
+      this.setBox();
+      const { sums, factor } = evaluation;
+      this.solver.solve(sums, factor, this.active, 0, this.damping, this.low, this.high, step);
+      if (!step.every(Number.isFinite) || !this.moveTrial()) return;
+      const cost = evaluation.tryAt(this.trial);
+      if (!(Math.abs(cost - previous.cost) <= COST_ROUNDING * previous.cost)) return;
+      this.values.set(this.trial);
+      evaluation.adopt(this.values);
+      this.iterations++;
+      if (this.hasArrived()) return;
+      if (this.offset < 0.5 * previous.offset) continue;
+      if (this.offset > previous.offset) this.returnTo(previous.values);
+      return;
+    }
+  }
+
+  private returnTo(values: Float64Array): void {
+    this.values.set(values);
+    this.evaluation.tryAt(this.values);
+    this.evaluation.adopt(this.values);
+    this.hasArrived();
+  }
+
+  private accept(gained: number, predicted: number): void {
+    const ratio = gained / predicted;
+    if (ratio > 0.75) this.lambda = this.lambda < 1e-14 ? 0 : this.lambda * 0.1;
+    else if (ratio < 0.25) this.lambda = Math.max(this.lambda, 1e-6) * 4;
+    this.growth = 4;
+    this.values.set(this.trial);
+    this.evaluation.adopt(this.values);
+  }
+
+  /** Limits of each component: the bounds, and the largest step of its own. */
+  private setBox(): void {
+    for (let k = 0; k < this.p; k++) {
+      const { lower, upper, logScaled, maxStep } = this.parameters[k]!;
+      const value = this.values[k]!;
+      const most = maxStep ?? (logScaled ? LOG_STEP : Number.POSITIVE_INFINITY);
+      if (lower !== undefined) this.toLower[k] = logScaled ? Math.log(lower / value) : lower - value;
+      if (upper !== undefined) this.toUpper[k] = logScaled ? Math.log(upper / value) : upper - value;
+      this.low[k] = Math.max(-most, this.toLower[k]!);
+      this.high[k] = Math.min(most, this.toUpper[k]!);
+    }
+  }
+
+  /** Values after the step, exactly on a bound that it reaches; false when nothing moved. */
+  private moveTrial(): boolean {
+    let moved = false;
+    for (let k = 0; k < this.p; k++) {
+      const parameter = this.parameters[k]!;
+      const value = this.values[k]!;
+      const delta = this.step[k]!;
+      let next = parameter.logScaled ? value * Math.exp(delta) : value + delta;
+      if (delta <= this.toLower[k]!) next = parameter.lower!;
+      else if (delta >= this.toUpper[k]!) next = parameter.upper!;
+      this.trial[k] = clampTo(parameter, next);
+      if (this.trial[k] !== value) moved = true;
+    }
+    return moved;
+  }
+
+  private finalStatus(status: FitStatus): FitStatus {
+    return this.resting().length > 0 ? 'at-bound' : status;
+  }
+
+  /** Parameters that rest on a bound. */
+  resting(): number[] {
+    const found: number[] = [];
+    this.parameters.forEach(({ lower, upper }, k) => {
+      const value = this.values[k]!;
+      if ((lower !== undefined && value <= lower) || (upper !== undefined && value >= upper)) found.push(k);
+    });
+    return found;
+  }
+}
+
+function clampTo({ lower, upper }: FitParameter, value: number): number {
+  if (lower !== undefined && value < lower) return lower;
+  if (upper !== undefined && value > upper) return upper;
+  return value;
+}
+
+function checkArguments(problem: LeastSquaresProblem, start: ArrayLike<number>, options: LeastSquaresOptions): void {
+  const { parameters, residualCount } = problem;
+  const refuse = (message: string, where: string): never => {
+    throw new InputError('bad-setting', message, where);
+  };
+  if (parameters.length === 0) refuse('A fit needs at least one parameter.', 'parameters');
+  if (start.length !== parameters.length)
+    refuse(`The fit has ${parameters.length} parameters but ${start.length} starting values.`, 'start');
+  if (!Number.isInteger(residualCount) || residualCount < 1)
+    refuse('A fit needs at least one residual.', 'residualCount');
+  if (problem.blocks && problem.blocks.reduce((total, { rows }) => total + rows, 0) !== residualCount)
+    refuse('The blocks do not add up to the number of residuals.', 'blocks');
+  if (options.lossScale !== undefined && !(options.lossScale > 0))
+    refuse('The scale of a robust loss must be above 0.', 'lossScale');
+  parameters.forEach(({ id, logScaled, lower, upper }, k) => {
+    const value = start[k]!;
+    if (!Number.isFinite(value)) refuse(`The starting value of ${id} is not a number.`, id);
+    if (logScaled && !(value > 0)) refuse(`${id} is fitted on a logarithmic scale, so it must start above 0.`, id);
+    if (logScaled && lower !== undefined && !(lower > 0)) refuse(`The lower bound of ${id} must be above 0.`, id);
+    if (lower !== undefined && upper !== undefined && !(lower < upper))
+      refuse(`The bounds of ${id} leave no room: ${lower} to ${upper}.`, id);
+  });
+}
