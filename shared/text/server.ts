@@ -1,0 +1,34 @@
+import type { Role } from '../contracts/team.js';
+
+/** What the server says when it refuses: what happened, and what to do. */
+export const server = {
+  notSignedIn: 'Sign in to go on.',
+  sessionEnded: 'Your session has ended. Sign in again; what you were doing stays on the page.',
+  signInFailed: 'E-mail and password do not match. Check both, or set a new password.',
+  linkNotOpen: 'This link was used already, has ended, or was cut short. Ask for a new one.',
+  notVerified:
+    'Confirm your e-mail address first: open the link in the letter we sent. Until then you can look, not change.',
+  accessDenied: (role: Role) =>
+    `Your role here is ${role}, which does not include this. Ask an owner or a lead of the team.`,
+  crossSite: 'A change has to come from a page of this server. Open Hummock itself and try again.',
+  notFound: 'There is nothing here under this address. It may be in the bin, or belong to another team.',
+  noRoute: 'The API has no such address. Check the path and the method.',
+  versionMissing: 'Say which version you change: send the header If-Match with the version in double quotes.',
+  versionConflict: 'Somebody changed this after you opened it. Both versions are shown; choose what to keep.',
+  cursorUnknown: 'The list has no such place. Start again without the cursor.',
+  validationFailed: (count: number) =>
+    count === 1 ? 'One field needs another look.' : `${count} fields need another look.`,
+  bodyUnreadable: 'The request is not readable JSON. Send one JSON value in UTF-8.',
+  textUnstorable: 'A text holds a character that cannot be stored (code 0). Remove it and send again.',
+  tooLarge: (limit: string) => `The request is larger than ${limit}. Send less at once.`,
+  tooManyTries: (seconds: number) =>
+    seconds < 90
+      ? `Too many tries. Wait ${seconds} s, then try again.`
+      : `Too many tries. Wait ${Math.ceil(seconds / 60)} min, then try again.`,
+  notReady: 'The server is starting, or its database is away. Try again in a moment.',
+  internalError:
+    'Something went wrong on the server. What you sent was not stored. Try again; if it comes back, send us the reference.',
+  unknownDevice: 'Unknown device',
+  device: (browser: string, system: string) => `${browser} on ${system}`,
+  firstTeam: (name: string) => `Team of ${name}`,
+} as const;
