@@ -30,6 +30,10 @@ export const PLACE_QUERIES = {
   itemId: inProject('item'),
   sourceId: inProject('source_file', 'false'), // a source goes with its sweeps
   sweepId: inProject('sweep'),
+  revisionId: `SELECT t.id AS "teamId", p.id AS "projectId", p.is_invented AS "isInvented",
+    x.deleted_at IS NOT NULL AS "isDeleted", p.deleted_at IS NOT NULL OR t.deleted_at IS NOT NULL AS "isGone", m.role
+    FROM sweep_revision r JOIN sweep x ON x.id = r.sweep_id JOIN project p ON p.id = x.project_id
+    JOIN team t ON t.id = p.team_id ${MEMBER} WHERE r.id = $1`,
   sheetId: inProject('sheet'),
   resultId: inProject('result'),
   setupId: inTeam('setup'),

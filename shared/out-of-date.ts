@@ -1,6 +1,6 @@
-import type { OutOfDateReason } from '../../shared/contracts/result.js';
+import type { OutOfDateReason } from './contracts/result.js';
 
-/** What a result was made from, as the server finds it today. */
+/** What a result was made from, as it is found today. */
 export interface Lineage {
   readonly calculator: { readonly made: number; readonly now: number | undefined }; // undefined: not in the registry
   readonly setup: { readonly made: number; readonly now: number } | undefined;

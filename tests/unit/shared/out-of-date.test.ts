@@ -1,5 +1,5 @@
 import { expect, it } from 'vitest';
-import { type Lineage, outOfDateReasons } from '../../../server/results/out-of-date.js';
+import { type Lineage, outOfDateReasons } from '../../../shared/out-of-date.js';
 
 const one = { number: 1, pointsSha256: 'a' };
 const two = { number: 2, pointsSha256: 'b' };
