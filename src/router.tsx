@@ -1,0 +1,44 @@
+import { createBrowserRouter, redirect } from 'react-router-dom';
+import { Loading } from './components/loading.js';
+import { RootLayout } from './components/root-layout.js';
+import { RouteError } from './components/route-error.js';
+import { session } from './lib/session.js';
+
+/** Pages of an account: without a session the sign-in form comes first, and then the page that was asked for. */
+function needsSession({ request }: { request: Request }) {
+  if (session.hint) return null;
+  const { pathname, search } = new URL(request.url);
+  throw redirect(`/sign-in?to=${encodeURIComponent(pathname + search)}`);
+}
+
+/** Each page is its own piece of code, fetched when it is first opened. A page exports `Component`. */
+export const router = createBrowserRouter([
+  {
+    path: '/',
+    Component: RootLayout,
+    ErrorBoundary: RouteError,
+    HydrateFallback: Loading,
+    children: [
+      { index: true, lazy: () => import('./pages/start.js') },
+      { path: 'register', lazy: () => import('./pages/register.js') },
+      { path: 'verify/:code', lazy: () => import('./pages/verify.js') },
+      { path: 'sign-in', lazy: () => import('./pages/sign-in.js') },
+      { path: 'forgot', lazy: () => import('./pages/forgot.js') },
+      { path: 'reset/:code', lazy: () => import('./pages/reset.js') },
+      {
+        loader: needsSession,
+        ErrorBoundary: RouteError,
+        children: [
+          { path: 'home', lazy: () => import('./pages/home.js') },
+          { path: 'me', lazy: () => import('./pages/me.js') },
+          { path: 'p/:project', lazy: () => import('./pages/project.js') },
+          { path: 'p/:project/add', lazy: () => import('./pages/add-sweeps.js') },
+          { path: 'p/:project/items', lazy: () => import('./pages/items.js') },
+          { path: 'p/:project/item/:item', lazy: () => import('./pages/item.js') },
+          { path: 'p/:project/sweep/:sweep', lazy: () => import('./pages/sweep.js') },
+        ],
+      },
+      { path: '*', lazy: () => import('./pages/not-found.js') },
+    ],
+  },
+]);
