@@ -47,29 +47,41 @@ export function threePoint(
   };
 }
 
-/** Top of the peak: a parabola of ln|Z| over ln f through the points above 93 % of the highest, three at least. */
+/**
+ * Top of the peak: a parabola of 1/|Z|² over ln f (what a single resonance is near its top) through the points above 98 %
+ * of the highest, or above 93 % where those are fewer than nine; three at least.
+ */
 function topOf(frequencyHz: Float64Array, magnitudeOhm: Float64Array, peak: number): { fsHz: number; zMaxOhm: number } {
   const highest = magnitudeOhm[peak] ?? 0;
-  const last = frequencyHz.length - 1;
-  let low = Math.max(0, peak - 1);
-  let high = Math.min(last, peak + 1);
-  while (low > 0 && (magnitudeOhm[low - 1] ?? 0) > 0.93 * highest) low -= 1;
-  while (high < last && (magnitudeOhm[high + 1] ?? 0) > 0.93 * highest) high += 1;
+  const narrow = rowsAbove(magnitudeOhm, peak, 0.98 * highest);
+  const [low, high] = narrow.high - narrow.low < 8 ? wide(magnitudeOhm, peak, highest) : [narrow.low, narrow.high];
   const centre = Math.log(frequencyHz[peak] ?? 1);
   const x: number[] = [];
   const y: number[] = [];
   for (let i = low; i <= high; i += 1) {
     x.push(Math.log(frequencyHz[i] ?? 1) - centre);
-    y.push(Math.log((magnitudeOhm[i] ?? 1) / highest));
+    y.push((highest / (magnitudeOhm[i] ?? 1)) ** 2);
   }
   const { offset, slope, curvature } = parabola(x, y);
-  const turn = curvature < 0 ? -slope / (2 * curvature) : Number.NaN;
+  const turn = curvature > 0 ? -slope / (2 * curvature) : Number.NaN;
   const isInside = turn >= (x[0] ?? 0) && turn <= (x.at(-1) ?? 0);
   if (!isInside) return { fsHz: Math.exp(centre), zMaxOhm: highest };
   return {
     fsHz: Math.exp(centre + turn),
-    zMaxOhm: highest * Math.exp(offset + slope * turn + curvature * turn * turn),
+    zMaxOhm: highest / Math.sqrt(offset + slope * turn + curvature * turn * turn),
   };
+}
+
+function wide(magnitudeOhm: Float64Array, peak: number, highest: number): [number, number] {
+  const { low, high } = rowsAbove(magnitudeOhm, peak, 0.93 * highest);
+  return [Math.max(0, Math.min(low, peak - 1)), Math.min(magnitudeOhm.length - 1, Math.max(high, peak + 1))];
+}
+
+function rowsAbove(magnitudeOhm: Float64Array, peak: number, levelOhm: number): { low: number; high: number } {
+  let [low, high] = [peak, peak];
+  while (low > 0 && (magnitudeOhm[low - 1] ?? 0) > levelOhm) low -= 1;
+  while (high < magnitudeOhm.length - 1 && (magnitudeOhm[high + 1] ?? 0) > levelOhm) high += 1;
+  return { low, high };
 }
 
 /** Least-squares parabola y = offset + slope·x + curvature·x² through n ≥ 3 points, by Cramer's rule. */
