@@ -102,6 +102,32 @@ async function clearStaleLock(dataDir, say) {
 }
 
 /**
+ * Starts the cluster again, on the same port, should its postmaster be killed.
+ * @param {string} root
+ * @param {Cluster} cluster
+ * @param {{ say: (line: string) => void, onFailure: (error: unknown) => void }} options
+ * @returns {() => Promise<void>} stops watching, once a start that is under way has finished
+ */
+export function keepRunning(root, cluster, { say, onFailure }) {
+  let starting = Promise.resolve();
+  let isStarting = false;
+  const startAgain = async () => {
+    say('PostgreSQL ended unexpectedly; starting it again.');
+    await ensureCluster(root, { say }).catch(onFailure);
+    isStarting = false;
+  };
+  const timer = setInterval(() => {
+    if (isStarting || postmasterOf(cluster.dataDir)) return;
+    isStarting = true;
+    starting = startAgain();
+  }, 1_000);
+  return () => {
+    clearInterval(timer);
+    return starting;
+  };
+}
+
+/**
  * Stops a cluster that this process started; one that was found running is left alone.
  * @param {Cluster} cluster
  */

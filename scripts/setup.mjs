@@ -190,6 +190,14 @@ export function plainEnvironment() {
   return env;
 }
 
+/** What is installing or building at the moment. @type {Set<import('node:child_process').ChildProcess>} */
+const children = new Set();
+
+/** Ends an installation or a build that is under way; the next start makes it good. */
+export function endSetupChildren() {
+  for (const child of children) child.kill('SIGTERM');
+}
+
 /**
  * @param {string} root
  * @param {string} program
@@ -200,12 +208,14 @@ export function plainEnvironment() {
 function run(root, program, args, what) {
   return new Promise((resolve, reject) => {
     const child = spawn(program, args, { cwd: root, env: plainEnvironment(), stdio: ['ignore', 'pipe', 'pipe'] });
+    children.add(child);
     let said = '';
     const listen = (/** @type {Buffer} */ chunk) => (said = (said + chunk).slice(-20_000));
     child.stdout.on('data', listen);
     child.stderr.on('data', listen);
     child.once('error', (error) => reject(new SetupError(`${what} could not start: ${error.message}`)));
     child.once('close', (code, signal) => {
+      children.delete(child);
       if (code === 0) return resolve();
       const last = said.trim().split('\n').slice(-25).join('\n  ');
       reject(new SetupError(`${what} did not succeed (${signal ?? `status ${code}`}):\n  ${last}`));
