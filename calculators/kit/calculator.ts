@@ -26,6 +26,7 @@ export interface FigureDeclaration {
   readonly unit: string; // Hz
   readonly definition: string;
   readonly source: string;
+  readonly isMain?: boolean; // shown at first; the rest is one press away
 }
 
 /** What a role was given. Exactly one of sweep and result is present. */
