@@ -26,6 +26,9 @@ export function describeFit(
   const p = parameters.length;
   const { cost, hessian } = evaluation.sums;
   const rests = new Set(end.resting);
+  parameters.forEach(({ held }, k) => {
+    if (held) rests.add(k);
+  });
   const indices = parameters.map((_, k) => k);
   const deaf = indices.filter((k) => !(hessian[k * p + k]! > 0) && !rests.has(k));
   const free = indices.filter((k) => !rests.has(k) && !deaf.includes(k));

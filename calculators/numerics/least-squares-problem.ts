@@ -10,6 +10,7 @@ export interface FitParameter {
   readonly logScaled?: boolean; // value > 0 always
   readonly lower?: number;
   readonly upper?: number;
+  readonly held?: boolean; // stays at its starting value and is not counted
   readonly maxStep?: number; // largest change of the scaled parameter in one iteration; 1.5 where logScaled, else none
   readonly typical?: number; // size used for difference steps when the value is 0
 }
@@ -60,7 +61,7 @@ export interface LeastSquaresOptions {
 
 export interface LeastSquaresFit {
   readonly values: Float64Array; // (p), natural
-  readonly standardErrors: Float64Array; // (p), natural; 0 on a bound (held there), Infinity where undetermined
+  readonly standardErrors: Float64Array; // (p), natural; 0 where held or on a bound, Infinity where undetermined
   readonly covariance: Float64Array; // (p, p) row-major, natural
   readonly scaledCovariance: Float64Array; // (p, p) row-major, of ln(value) where logScaled
   readonly correlations: number[][]; // (p, p)

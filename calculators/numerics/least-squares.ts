@@ -124,8 +124,8 @@ class Iteration {
       const pressesLow = parameter.lower !== undefined && value <= parameter.lower && slope > 0;
       const pressesHigh = parameter.upper !== undefined && value >= parameter.upper && slope < 0;
       const curvature = hessian[k * this.p + k]!;
-      this.active[k] = pressesLow || pressesHigh || !(curvature > 0) ? 0 : 1;
-      const floor = parameter.logScaled ? 0 : this.damping[k]!; // Moré: never forget how steep it was
+      this.active[k] = parameter.held || pressesLow || pressesHigh || !(curvature > 0) ? 0 : 1;
+      const floor = parameter.logScaled ? 0 : 0.1 * this.damping[k]!; // after Moré: forget slowly how steep it was
       this.damping[k] = Math.max(curvature, floor) || 1;
     }
   }
@@ -269,7 +269,8 @@ class Iteration {
   /** Parameters that rest on a bound. */
   resting(): number[] {
     const found: number[] = [];
-    this.parameters.forEach(({ lower, upper }, k) => {
+    this.parameters.forEach(({ held, lower, upper }, k) => {
+      if (held) return;
       const value = this.values[k]!;
       if ((lower !== undefined && value <= lower) || (upper !== undefined && value >= upper)) found.push(k);
     });

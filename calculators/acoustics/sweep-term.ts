@@ -1,0 +1,137 @@
+import type { ComplexSweep, Sweep } from '../kit/sweep.js';
+import { hasPhase, magnitudeOf } from '../kit/sweep.js';
+import { type ComplexArray, complexArray } from '../numerics/complex-array.js';
+import type { FitParameter, NormalSums } from '../numerics/least-squares-problem.js';
+import { type Loss, lossValue, lossWeight } from '../numerics/losses.js';
+import { type DriverModel, driverImpedance, driverParameters } from './driver-impedance.js';
+import { type FrequencyGrid, frequencyGrid } from './frequency-grid.js';
+
+/** A sweep made ready for fitting. Shapes (n). Without phase, `im` and `phaseRad` are 0 and only |Z| is fitted. */
+export interface SweepData {
+  readonly grid: FrequencyGrid;
+  readonly hasPhase: boolean;
+  readonly re: Float64Array; // ohm; |Z| where there is no phase
+  readonly im: Float64Array;
+  readonly logMagnitude: Float64Array; // ln|Z/Ω|
+  readonly phaseRad: Float64Array;
+}
+
+export function sweepData(sweep: Sweep): SweepData {
+  const phase = hasPhase(sweep);
+  const re = phase ? (sweep as ComplexSweep).realOhm : magnitudeOf(sweep);
+  const im = phase ? (sweep as ComplexSweep).imaginaryOhm : new Float64Array(re.length);
+  return {
+    grid: frequencyGrid(sweep.frequencyHz),
+    hasPhase: phase,
+    re,
+    im,
+    logMagnitude: magnitudeOf(sweep).map(Math.log),
+    phaseRad: phase ? re.map((value, i) => Math.atan2(im[i]!, value)) : im,
+  };
+}
+
+/**
+ * The misfit of one sweep under one model: ρ = ln(Z/Zmodel), complex (or its real part where there is no phase),
+ * times the weight of the point. Rows: ρ's real and imaginary part side by side, point after point.
+ */
+export class SweepTerm {
+  readonly parameters: readonly FitParameter[];
+  readonly groupSize: 1 | 2;
+  readonly rows: number;
+  private readonly z: ComplexArray;
+  private readonly columns: readonly ComplexArray[];
+
+  constructor(
+    readonly model: DriverModel,
+    readonly data: SweepData,
+    readonly weights: Float64Array, // (n), 0 = switched off
+  ) {
+    const n = weights.length;
+    this.parameters = driverParameters(model);
+    this.groupSize = data.hasPhase ? 2 : 1;
+    this.rows = n * this.groupSize;
+    this.z = complexArray(n);
+    this.columns = this.parameters.map(() => complexArray(n));
+  }
+
+  /** Rows that carry weight. */
+  get activeRows(): number {
+    let points = 0;
+    for (const weight of this.weights) if (weight > 0) points++;
+    return points * this.groupSize;
+  }
+
+  /** Weighted residual to `out` from row `at` on. */
+  residual(values: ArrayLike<number>, out: Float64Array, at = 0): void {
+    driverImpedance(this.model, values, this.data.grid, this.z);
+    this.writeResidual(out, at);
+  }
+
+  /** ∂(weighted residual)/∂(scaled parameter k) to out[k·stride + at …]. */
+  jacobian(values: ArrayLike<number>, out: Float64Array, stride = this.rows, at = 0): void {
+    driverImpedance(this.model, values, this.data.grid, this.z, this.columns);
+    const { weights, groupSize } = this;
+    this.columns.forEach(({ re, im }, k) => {
+      const start = k * stride + at;
+      for (let i = 0; i < weights.length; i++) {
+        out[start + groupSize * i] = -weights[i]! * re[i]!;
+        if (groupSize === 2) out[start + 2 * i + 1] = -weights[i]! * im[i]!;
+      }
+    });
+  }
+
+  /** Cost, gradient and curvature (lower triangle) with respect to the scaled parameters, set anew. */
+  accumulate(values: ArrayLike<number>, loss: Loss, out: NormalSums): void {
+    driverImpedance(this.model, values, this.data.grid, this.z, this.columns);
+    const { weights, columns, groupSize } = this;
+    const p = columns.length;
+    out.gradient.fill(0);
+    out.hessian.fill(0);
+    out.cost = 0;
+    const squareScale = loss.scale * loss.scale;
+    const pair = new Float64Array(2);
+    for (let i = 0; i < weights.length; i++) {
+      const weight = weights[i]!;
+      if (weight === 0) continue;
+      this.residualAt(i, pair);
+      const s = weight * weight;
+      const z = (s * (pair[0]! * pair[0]! + pair[1]! * pair[1]!)) / squareScale;
+      out.cost += 0.5 * squareScale * lossValue(loss.kind, z);
+      const w = s * lossWeight(loss.kind, z);
+      for (let k = 0; k < p; k++) {
+        const aRe = w * columns[k]!.re[i]!;
+        const aIm = groupSize === 2 ? w * columns[k]!.im[i]! : 0;
+        out.gradient[k]! -= aRe * pair[0]! + aIm * pair[1]!;
+        for (let l = 0; l <= k; l++) out.hessian[k * p + l]! += aRe * columns[l]!.re[i]! + aIm * columns[l]!.im[i]!;
+      }
+    }
+  }
+
+  private writeResidual(out: Float64Array, at: number): void {
+    const { weights, groupSize } = this;
+    const pair = new Float64Array(2);
+    for (let i = 0; i < weights.length; i++) {
+      this.residualAt(i, pair);
+      out[at + groupSize * i] = weights[i]! * pair[0]!;
+      if (groupSize === 2) out[at + 2 * i + 1] = weights[i]! * pair[1]!;
+    }
+  }
+
+  /** [ln|Z/Zmodel|, arg(Z/Zmodel)]; the second is 0 where there is no phase. */
+  private residualAt(i: number, pair: Float64Array): void {
+    const { data, z } = this;
+    pair[0] = data.logMagnitude[i]! - 0.5 * Math.log(z.re[i]! * z.re[i]! + z.im[i]! * z.im[i]!);
+    if (this.groupSize === 1) return;
+    const turn = data.phaseRad[i]! - Math.atan2(z.im[i]!, z.re[i]!);
+    pair[1] = turn - 2 * Math.PI * Math.round(turn / (2 * Math.PI));
+  }
+}
+
+/** ρ of every point, unweighted: the misfit to plot, shape (n). */
+export function logMisfit(model: DriverModel, values: ArrayLike<number>, data: SweepData): ComplexArray {
+  const term = new SweepTerm(model, data, new Float64Array(data.re.length).fill(1));
+  const rows = new Float64Array(term.rows);
+  term.residual(values, rows);
+  if (!data.hasPhase) return { re: rows, im: new Float64Array(rows.length) };
+  return { re: rows.filter((_, i) => i % 2 === 0), im: rows.filter((_, i) => i % 2 === 1) };
+}
