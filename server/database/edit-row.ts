@@ -27,7 +27,7 @@ export async function lockRow<Row extends EditableRow>(
   id: string,
 ): Promise<Row> {
   const where = { id } as FindOptionsWhere<Row>;
-  const row = await manager.findOne(entity, { where, lock: { mode: 'pessimistic_write' } });
+  const row = await manager.findOne(entity, { where, lock: { mode: 'for_no_key_update' } }); // rows that only refer to it need not wait
   if (!row) throw new AppError('not-found', text.server.notFound);
   return row;
 }

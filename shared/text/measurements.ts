@@ -12,4 +12,9 @@ export const measurements = {
   fileMissing: 'The upload brings no file. Send it as the part named "file".',
   sweepMissing: 'The upload says nothing about the sweep. Send its name and batch as JSON in the part named "sweep".',
   uploadBroken: 'The upload ended early or is not a form with one file. Nothing was stored. Send it again.',
+  alreadyHere: (name: string) =>
+    `This file is in the project already, as “${name}”. Open that sweep, or read its file again with another rule.`,
+  sourceHereAgain:
+    'The file of this sweep was added to the project again. Put that sweep away first, then restore this one.',
+  itemNotHere: 'This item is not in the project. Choose one of its items, or none.',
 } as const;
