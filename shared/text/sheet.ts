@@ -1,6 +1,7 @@
 /** Words of the sheet: ledger, chart bar, results, footnotes. */
 export const sheet = {
   panes: { ledger: 'Ledger', chart: 'Chart', results: 'Results', footnotes: 'Footnotes' },
+  panesLabel: 'Parts of the sheet',
   resize: (pane: string) => `Width of ${pane}`,
   resizeHeight: (pane: string) => `Height of ${pane}`,
   wider: 'Wider',

@@ -26,7 +26,11 @@ export function cardInputs(card: Card, sweeps: readonly SweepRow[]): CardInput[]
 }
 
 /** Everything that decides the digits of a card's run: the same as of the result that would be kept. */
-export function cardIdentityParts(card: Card, definition: CalculatorDefinition, inputs: readonly CardInput[]): ResultInputs {
+export function cardIdentityParts(
+  card: Card,
+  definition: CalculatorDefinition,
+  inputs: readonly CardInput[],
+): ResultInputs {
   return {
     calculatorId: definition.id,
     calculatorVersion: definition.version,
@@ -54,7 +58,10 @@ export function roleInputs(inputs: readonly CardInput[], points: ReadonlyMap<str
       ...(own.realOhm && own.imaginaryOhm ? { realOhm: own.realOhm, imaginaryOhm: own.imaginaryOhm } : {}),
       ...(own.magnitudeOhm ? { magnitudeOhm: own.magnitudeOhm } : {}),
     };
-    roles[role] = [...(roles[role] ?? []), { sweep: { name: sweep.name, ...planes, conditions: sweep.conditions }, keys }];
+    roles[role] = [
+      ...(roles[role] ?? []),
+      { sweep: { name: sweep.name, ...planes, conditions: sweep.conditions }, keys },
+    ];
   }
   return roles;
 }
@@ -72,7 +79,8 @@ export function staleReasons(result: Result, parts: ResultInputs): StaleReason[]
     return !now || JSON.stringify(sorted(now.keys)) !== JSON.stringify(sorted(input.keys));
   };
   if (result.inputs.length !== parts.inputs.length || result.inputs.some(isOther)) reasons.add('inputs');
-  else if (result.inputs.some((i) => asked.get(`${i.role} ${i.sweepId}`)?.pointsSha256 !== i.pointsSha256)) reasons.add('reading');
+  else if (result.inputs.some((i) => asked.get(`${i.role} ${i.sweepId}`)?.pointsSha256 !== i.pointsSha256))
+    reasons.add('reading');
   return [...reasons];
 }
 
@@ -83,12 +91,7 @@ function sorted(value: Readonly<Record<string, unknown>>): [string, unknown][] {
 }
 
 /** The result that "Keep" stores: typed arrays become lists. */
-export function keptResult(
-  parts: ResultInputs,
-  sheetId: string,
-  itemId: string | null,
-  output: Output,
-): CreateResult {
+export function keptResult(parts: ResultInputs, sheetId: string, itemId: string | null, output: Output): CreateResult {
   const traces = output.traces.map(({ x, y, re, im, ...rest }) => ({
     ...rest,
     x: Array.from(x),

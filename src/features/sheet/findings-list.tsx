@@ -1,7 +1,7 @@
 import type { Finding, Severity } from '../../../shared/output.js';
 import { formatQuantity } from '../../../shared/quantity-text.js';
 import { text } from '../../../shared/text.js';
-import { StatusWord, type StatusTone } from '../../components/status-word.js';
+import { type StatusTone, StatusWord } from '../../components/status-word.js';
 import { usePreferences } from '../../lib/preferences.js';
 
 const words = text.sheet.results;

@@ -77,7 +77,9 @@ export function useCalculatorRun({ definition, parts, inputs, points, isAutomati
       (error: unknown) => {
         if (job.current !== own) return;
         const isStop = error instanceof JobStopped;
-        setState((now) => (isStop ? { kind: 'stopped', before: outputOf(now) } : { kind: 'failed', error, before: outputOf(now) }));
+        setState((now) =>
+          isStop ? { kind: 'stopped', before: outputOf(now) } : { kind: 'failed', error, before: outputOf(now) },
+        );
       },
     );
   }, [definition]);
