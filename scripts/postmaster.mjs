@@ -19,6 +19,7 @@ import { commandPath, declineDebiansOwnCluster, installDebianPackages, isRoot } 
 import { bindable, SetupError, waitUntil, workingFolder } from './processes.mjs';
 
 const OLDEST_MAJOR = 15;
+const LARGEST_LOG_BYTES = 8 << 20;
 
 /** @typedef {{ uid?: number, gid?: number }} User who PostgreSQL runs as; empty means this process's own user */
 /** @typedef {{ bin: string, major: number }} Programs */
@@ -170,37 +171,45 @@ function lockLines(dataDir) {
 /**
  * Starts a server and waits until it answers. The port is the preferred one when that is free, otherwise any free one;
  * somebody may take it between the look and the start, so a second and third are tried.
- * @param {{ dataDir: string, logPath: string, user: User, programs: Programs, preferredPort?: number, settings?: string[] }} given
+ * `endsWithParent`: the kernel itself ends the server when this process ends, whatever way it ends.
+ * @param {{ dataDir: string, logPath: string, user: User, programs: Programs, preferredPort?: number, settings?: string[], endsWithParent?: boolean }} given
  * @returns {Promise<{ pid: number, port: number }>}
  */
-export async function postmasterStart({ dataDir, logPath, user, programs, preferredPort = 0, settings = [] }) {
+export async function postmasterStart({ dataDir, logPath, preferredPort = 0, ...given }) {
   for (let attempt = 1; ; attempt += 1) {
-    const port = (await bindable(attempt === 1 ? preferredPort : 0)) ?? (await bindable(0));
-    const options = [`port=${port}`, 'listen_addresses=127.0.0.1', 'unix_socket_directories=', ...settings];
-    const logSize = existsSync(logPath) ? statSync(logPath).size : 0;
-    const log = openSync(logPath, logSize > 8 << 20 ? 'w' : 'a', 0o600);
-    const server = spawn(
-      join(programs.bin, 'postgres'),
-      ['-D', dataDir, ...options.flatMap((option) => ['-c', option])],
-      {
-        ...user,
-        cwd: '/',
-        env: serverEnvironment(),
-        stdio: ['ignore', log, log],
-        detached: true, // Ctrl-C goes to the starter alone, which stops it in order
-      },
-    );
-    closeSync(log);
+    const port = (await bindable(attempt === 1 ? preferredPort : 0)) ?? (await bindable(0)) ?? 0;
+    const server = spawnPostmaster({ ...given, dataDir, logPath, port });
     let ended = false;
     server.once('exit', () => (ended = true));
     server.once('error', () => (ended = true));
-    server.unref();
     await waitUntil(() => ended || postmasterOf(dataDir)?.pid === server.pid, 60_000);
     const running = ended ? undefined : postmasterOf(dataDir);
     if (running) return running;
     if (!ended) server.kill('SIGQUIT');
     if (attempt === 3) throw new SetupError(`PostgreSQL did not start. The end of ${logPath}:\n  ${tail(logPath)}`);
   }
+}
+
+/**
+ * @param {{ dataDir: string, logPath: string, port: number, user: User, programs: Programs, settings?: string[], endsWithParent?: boolean }} given
+ */
+function spawnPostmaster({ dataDir, logPath, port, user, programs, settings = [], endsWithParent = false }) {
+  const options = [`port=${port}`, 'listen_addresses=127.0.0.1', 'unix_socket_directories=', ...settings];
+  const command = [join(programs.bin, 'postgres'), '-D', dataDir, ...options.flatMap((option) => ['-c', option])];
+  if (endsWithParent) command.unshift('setpriv', '--pdeathsig', 'SIGQUIT');
+  const isLogLarge = existsSync(logPath) && statSync(logPath).size > LARGEST_LOG_BYTES;
+  const log = openSync(logPath, isLogLarge ? 'w' : 'a', 0o600);
+  const [program = '', ...args] = command;
+  const server = spawn(program, args, {
+    ...user,
+    cwd: '/',
+    env: serverEnvironment(),
+    stdio: ['ignore', log, log],
+    detached: true, // Ctrl-C goes to the starter alone, which stops it in order
+  });
+  closeSync(log);
+  server.unref();
+  return server;
 }
 
 /** @param {string} path */

@@ -19,8 +19,8 @@ const READY_WITHIN_MS = 120_000;
  */
 
 /**
- * Starts `main` and waits until it is ready to serve. Structured log lines go to `dataDir/logs/server.log`; everything else
- * that the server prints is meant for the person. It sends `{ listening: true, tell: string[] }` once it listens, with the lines
+ * Starts `main` and waits until it is ready to serve. All that it prints goes to `dataDir/logs/server.log`, and what a
+ * person has to know is said as well. It sends `{ listening: true, tell: string[] }` once it listens, with the lines
  * that close a start.
  * @param {object} given
  * @param {string} given.root
@@ -59,7 +59,8 @@ export async function startServer({ root, main, port, dataDir, env, say }) {
         log.write(`${line}\n`);
         lastLines.push(line);
         if (lastLines.length > 12) lastLines.shift();
-        if (!line.startsWith('{')) say(line);
+        const words = forThePerson(line);
+        if (words !== undefined) say(words);
       });
   }
   const ended = new Promise((/** @type {(how: string) => void} */ resolve) => {
@@ -86,6 +87,21 @@ export async function startServer({ root, main, port, dataDir, env, say }) {
   await server.stop();
   const what = isInTime ? `ended ${how} before it was ready` : `was not ready within ${READY_WITHIN_MS / 1000} s`;
   throw new SetupError(`The server ${what}. It said:\n  ${lastLines.join('\n  ')}\nThe whole log: ${logPath}`);
+}
+
+/**
+ * Of a structured log line only the links of letters that nobody sends, and faults; any other line as it is.
+ * @param {string} line
+ */
+function forThePerson(line) {
+  if (!line.startsWith('{')) return line;
+  try {
+    const { level, msg, event, to, link, reqId } = JSON.parse(line);
+    if (event === 'letter') return `Letter to ${to}: ${link ?? msg}`;
+    return level >= 50 ? `Fault in the server: ${msg}${reqId ? ` (reference ${reqId})` : ''}` : undefined;
+  } catch {
+    return line;
+  }
 }
 
 /**

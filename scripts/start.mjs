@@ -15,7 +15,7 @@ import { build, endSetupChildren, installPackages, inTurn, requireNode } from '.
 
 const FIRST_PORT = 4680;
 const root = dirname(dirname(fileURLToPath(import.meta.url)));
-const dataDir = process.env.HUMMOCK_DATA_DIR ?? join(root, '.data');
+const dataDir = process.env.HUMMOCK_DATA_DIR || join(root, '.data');
 const runningPath = join(root, '.data', 'running.json');
 const isDevelopment = process.argv.includes('--dev');
 
@@ -51,7 +51,7 @@ async function setUp() {
   goOn();
   await installPackages(root, say);
   goOn();
-  const databaseUrl = process.env.DATABASE_URL ?? (await ownDatabase());
+  const databaseUrl = process.env.DATABASE_URL || (await ownDatabase());
   goOn();
   if (!isDevelopment) await build(root, join(root, 'dist'), say);
   goOn();
@@ -81,8 +81,8 @@ async function ownDatabase() {
  * @param {string} databaseUrl
  */
 async function serve(databaseUrl) {
-  const forced = process.env.HUMMOCK_PORT;
-  const host = process.env.HUMMOCK_HOST;
+  const forced = process.env.HUMMOCK_PORT || undefined;
+  const host = process.env.HUMMOCK_HOST || undefined;
   for (let from = FIRST_PORT; ; ) {
     const port = forced === undefined ? await firstFreePort(from, host) : await thePort(forced, host);
     const env = { DATABASE_URL: databaseUrl, HUMMOCK_CLIENT_DIR: join(root, 'dist/client') };
