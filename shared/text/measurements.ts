@@ -17,4 +17,16 @@ export const measurements = {
   sourceHereAgain:
     'The file of this sweep was added to the project again. Put that sweep away first, then restore this one.',
   itemNotHere: 'This item is not in the project. Choose one of its items, or none.',
+  sheetNotHere: 'This sheet is not in the project. Keep the result on one of its sheets, or on none.',
+  setupNotHere: 'The team has no such version of a setup for this calculator. Choose one from the list of setups.',
+  revisionNotHere:
+    'This reading of a sweep is not in the project, or its sweep is in the bin. Run the calculation again.',
+  revisionOfOther: 'This reading belongs to another sweep. Run the calculation again.',
+  pointsDiffer:
+    'The points that were calculated with are not the points of this reading. Load the sweep again and run.',
+  calculatorUnknown: (id: string) => `There is no calculator named ${id} here.`,
+  calculatorNewer: (version: number) =>
+    `The server knows this calculator up to version ${version}. Load the page again and run once more.`,
+  setupNameTaken: (name: string) => `The team has a setup named “${name}” already. Choose another name.`,
+  limitsNameTaken: (name: string) => `The team has limits named “${name}” already. Choose another name.`,
 } as const;
