@@ -31,7 +31,8 @@ export interface ChangeRecord {
 /**
  * Writes who changed what into the hash chain of the team and queues the project event, both in the transaction of the
  * change itself. The lock on the chain's head is held to the end of the transaction: changes of one team commit in the
- * order of their sequence. A transaction that changes many rows calls `lockChain` first, so that two cannot deadlock.
+ * order of their sequence. A transaction that changes many rows calls `lockChain` first, and so do the others that may
+ * change one of these rows: two then cannot wait for each other.
  */
 export async function recordChange(manager: EntityManager, record: ChangeRecord): Promise<void> {
   const head = await lockChain(manager, record.teamId);

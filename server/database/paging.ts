@@ -30,14 +30,15 @@ export async function pageOfRows<Row extends ObjectLiteral & { id: string; creat
   const found = await rows.getMany();
   const items = found.slice(0, limit);
   const last = items.at(-1);
-  return { items, next: found.length > limit && last ? encodeCursor(last) : null };
+  return { items, next: found.length > limit && last ? encodeCursor(last.createdAt, last.id) : null };
 }
 
-function encodeCursor(row: { id: string; createdAt: Date }): string {
-  return Buffer.from(JSON.stringify([row.createdAt.toISOString(), row.id])).toString('base64url');
+/** A place in a list that is ordered by a time and, where times are equal, by id. */
+export function encodeCursor(time: Date, id: string): string {
+  return Buffer.from(JSON.stringify([time.toISOString(), id])).toString('base64url');
 }
 
-function decodeCursor(cursor: string): z.infer<typeof CursorSchema> {
+export function decodeCursor(cursor: string): [time: string, id: string] {
   try {
     return CursorSchema.parse(JSON.parse(Buffer.from(cursor, 'base64url').toString('utf8')));
   } catch (cause) {

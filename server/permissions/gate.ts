@@ -8,6 +8,7 @@ import { actorOf } from './actor.js';
 import { PLACE_QUERIES, type Target } from './place.js';
 
 interface KnownRoute {
+  name: string; // as the table names it
   method: string;
   pattern: RegExp; // one named group for each parameter
   rule: RouteRule;
@@ -16,14 +17,20 @@ interface KnownRoute {
 const KNOWN_ROUTES: readonly KnownRoute[] = Object.entries(ROUTES).map(([name, rule]) => {
   const [method = '', path = ''] = name.split(' ');
   const pattern = new RegExp(`^${path.replace(/:(\w+)/g, '(?<$1>[^/]+)')}$`);
-  return { method, pattern, rule };
+  return { name, method, pattern, rule };
 });
 
-export function routeOf(method: string, path: string): { rule: RouteRule; params: Record<string, string> } | undefined {
+export interface MatchedRoute {
+  readonly name: string;
+  readonly rule: RouteRule;
+  readonly params: Record<string, string>;
+}
+
+export function routeOf(method: string, path: string): MatchedRoute | undefined {
   const asked = method === 'HEAD' ? 'GET' : method;
   for (const route of KNOWN_ROUTES) {
     const match = route.method === asked ? route.pattern.exec(path) : null;
-    if (match) return { rule: route.rule, params: { ...match.groups } };
+    if (match) return { name: route.name, rule: route.rule, params: { ...match.groups } };
   }
   return undefined;
 }
@@ -37,7 +44,7 @@ function targetOf(params: Record<string, string>): Target | undefined {
 /** Stands before every router: what the table of routes does not name, or does not allow, is not reached. */
 export function gate(access: Access): RequestHandler {
   return async (request, _response, next) => {
-    const known = routeOf(request.method, request.path);
+    const known = routeOf(request.method, request.baseUrl + request.path);
     if (!known) throw new AppError('not-found', text.server.notFound);
     if (known.rule !== 'open') {
       const actor = actorOf(request);

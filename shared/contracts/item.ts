@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { pageOf, rowShape } from './paging.js';
+import { PageQuerySchema, pageOf, rowShape } from './paging.js';
 
 /** The thing measured. Published figures are kept as they are printed, in SI, with an optional tolerance (fraction). */
 export const ITEM_KINDS = ['driver', 'box', 'part', 'jig'] as const;
@@ -28,3 +28,5 @@ export type UpdateItem = z.infer<typeof UpdateItemSchema>;
 export const ItemSchema = z.object({ ...rowShape, ...itemShape, projectId: z.uuid() });
 export type Item = z.infer<typeof ItemSchema>;
 export const ItemPageSchema = pageOf(ItemSchema);
+export const ItemQuerySchema = PageQuerySchema.extend({ kind: ItemKindSchema.optional() });
+export type ItemQuery = z.infer<typeof ItemQuerySchema>;

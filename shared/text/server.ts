@@ -19,6 +19,7 @@ export const server = {
   validationFailed: (count: number) =>
     count === 1 ? 'One field needs another look.' : `${count} fields need another look.`,
   bodyUnreadable: 'The request is not readable JSON. Send one JSON value in UTF-8.',
+  bodyTooDeep: (levels: number) => `The request holds values nested deeper than ${levels} levels. Send it flatter.`,
   textUnstorable: 'A text holds a character that cannot be stored (code 0). Remove it and send again.',
   tooLarge: (limit: string) => `The request is larger than ${limit}. Send less at once.`,
   tooManyTries: (seconds: number) =>

@@ -1,0 +1,73 @@
+import type { ErrorRequestHandler, RequestHandler } from 'express';
+import { QueryFailedError } from 'typeorm';
+import { ZodError } from 'zod';
+import type { Problem } from '../../shared/contracts/problem.js';
+import { AppError, ERROR_STATUS, InputError } from '../../shared/errors.js';
+import { text } from '../../shared/text.js';
+
+interface Refusal {
+  error: AppError;
+  issues?: Problem['issues'];
+}
+
+/** What the JSON parser of Express refuses, by the `type` it gives its errors. */
+const UNREADABLE = new Set([
+  'entity.parse.failed',
+  'encoding.unsupported',
+  'charset.unsupported',
+  'request.aborted',
+  'request.size.invalid',
+]);
+/** SQLSTATE of a text that PostgreSQL cannot hold: the character of code 0, or half of a pair. */
+const UNSTORABLE = new Set(['22021', '22P05', '22P02']);
+
+function refusalOf(error: unknown): Refusal {
+  if (error instanceof AppError) return { error };
+  if (error instanceof InputError)
+    return { error: new AppError('file-refused', error.message, { ...error.toJSON() }, error) };
+  if (error instanceof ZodError) {
+    const issues = error.issues.map((issue) => ({ path: issue.path.join('.'), message: issue.message }));
+    return { error: new AppError('validation-failed', text.server.validationFailed(issues.length), {}, error), issues };
+  }
+  if (error instanceof URIError) return { error: new AppError('not-found', text.server.notFound, {}, error) };
+  if (error instanceof QueryFailedError && UNSTORABLE.has((error.driverError as { code?: string }).code ?? '')) {
+    return { error: new AppError('validation-failed', text.server.textUnstorable, {}, error) };
+  }
+  const type = (error as { type?: string } | undefined)?.type;
+  if (type === 'entity.too.large') {
+    const kilobytes = Math.round(((error as { limit?: number }).limit ?? 0) / 1024);
+    return { error: new AppError('too-large', text.server.tooLarge(`${kilobytes} kB`), {}, error) };
+  }
+  if (type !== undefined && UNREADABLE.has(type)) {
+    return { error: new AppError('validation-failed', text.server.bodyUnreadable, {}, error) };
+  }
+  return { error: new AppError('internal-error', text.server.internalError, {}, error) };
+}
+
+/** Turns whatever a route threw into problem details (RFC 9457); what was not foreseen is logged with its stack. */
+export function problemAnswer(): ErrorRequestHandler {
+  return (thrown: unknown, request, response, next) => {
+    const { error, issues } = refusalOf(thrown);
+    if (error.code === 'internal-error') request.log.error({ err: thrown }, 'not foreseen');
+    if (response.headersSent) return next(thrown); // Express then ends the connection
+    const problem: Problem = {
+      type: `/help/errors#${error.code}`,
+      title: text.errors.titles[error.code],
+      status: ERROR_STATUS[error.code],
+      code: error.code,
+      detail: error.message,
+      requestId: String(request.id),
+      ...(issues && { issues }),
+      ...(Object.keys(error.detail).length > 0 && { extra: error.detail }),
+    };
+    if (typeof error.detail.waitSeconds === 'number') response.set('Retry-After', String(error.detail.waitSeconds));
+    response.status(problem.status).set('Cache-Control', 'no-store').type('application/problem+json');
+    response.send(JSON.stringify(problem));
+  };
+}
+
+export function noSuchRoute(): RequestHandler {
+  return () => {
+    throw new AppError('not-found', text.server.noRoute);
+  };
+}
