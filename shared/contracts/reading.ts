@@ -35,6 +35,7 @@ export const GuessSchema = z.object({
   reason: z.string(), // "comma, because 598 of 600 lines agree"
   toldByPerson: z.boolean(),
 });
+export type Guess = z.infer<typeof GuessSchema>;
 export const ReadingSchema = z.object({
   ...choices,
   columnNames: z.array(z.string()), // as written in the header, '' where unnamed

@@ -1,0 +1,164 @@
+import type { Guess, Reading, ReadingOverrides } from '../../../shared/contracts/reading.js';
+import { InputError } from '../../../shared/errors.js';
+import type { Finding } from '../../../shared/output.js';
+import { readingText as words } from '../../../shared/text/reading.js';
+import { type Points, toPoints } from './curve.js';
+import { readCharacters } from './encoding.js';
+import { finding } from './findings.js';
+import { told } from './guess-units.js';
+import { phaseMisfit } from './minimum-phase.js';
+import { guessesOf, type Recognised, recognise } from './recognise.js';
+import { notACurve } from './refusals.js';
+import { hasInk } from './sample.js';
+import { attachedUnit } from './sample-curve.js';
+import { type ScanPlan, scanRows, type Table, type TakenColumn, type Watch } from './scan-rows.js';
+import { thin } from './thin.js';
+
+export interface TextReading {
+  readonly points: Points;
+  readonly isPair: boolean; // first and second are Re and Im, not |Z| and phase
+  readonly reading: Reading;
+  readonly findings: Finding[];
+}
+
+/** Reads a table of impedance from text: recognise, scan, clean, sort, average, thin. */
+export function readText(bytes: Uint8Array, fileName: string, overrides: ReadingOverrides, watch: Watch): TextReading {
+  const text = readCharacters(bytes, overrides.encoding, watch.checkpoint);
+  if (!hasInk(text.codes, 0, text.codes.length)) {
+    throw new InputError('empty-file', 'This file holds no characters but blanks. Export the sweep again.', fileName);
+  }
+  const found = recognise(text, overrides, fileName);
+  const isPair = found.columns.kinds.includes('real');
+  const plan = planOf(found, isPair);
+  const table = scanRows(text, plan, watch);
+  refuseTable(table, fileName);
+  const findings: Finding[] = [];
+  const kind = {
+    isPair,
+    frequencyUnit: found.units.frequency.unit,
+    magnitudeUnit: found.units.magnitude.unit,
+    phaseUnit: found.units.phase.unit,
+    isTurned: overrides.phaseSign === 'turned',
+  };
+  const points = toPoints(table, kind, fileName, findings, watch);
+  thin(points, isPair, findings, watch);
+  const sign = checkSign(points, isPair, findings);
+  findings.push(...skippedFindings(table));
+  return { points, isPair, findings, reading: readingOf(found, table, overrides, sign) };
+}
+
+const EXPONENT = { Hz: 0, kHz: 3, MHz: 6, 'rad/s': 0, ohm: 0, kilohm: 3, dB: 0, degree: 0, radian: 0 } as const;
+
+/** Frequency first, then |Z| or Re, then phase or Im. */
+function planOf(found: Recognised, isPair: boolean): ScanPlan {
+  const { guess, layout, columns, units } = found;
+  const column = (kind: (typeof columns.kinds)[number]) => columns.kinds.indexOf(kind);
+  const taken = (at: number, exponent: number): TakenColumn => {
+    const { unit, isMixed } = attachedUnit(guess, at);
+    return { column: at, exponent, unitExponent: isMixed ? 0 : (unit?.exponent ?? 0) };
+  };
+  const size = EXPONENT[units.magnitude.unit] + units.magnitude.extraExponent;
+  const take = [taken(column('frequency'), EXPONENT[units.frequency.unit])];
+  take.push(taken(column(isPair ? 'real' : 'magnitude'), size));
+  if (isPair) take.push(taken(column('imaginary'), size));
+  else if (column('phase') >= 0) take.push(taken(column('phase'), 0));
+  const decimals = new Set(guess.rows.map((row) => row.at(-1)?.decimals ?? 0));
+  const fixedDecimals = guess.rows.length >= 8 && decimals.size === 1 ? ([...decimals][0] ?? 0) : 0;
+  const { dataStart, headerLines } = layout;
+  return { dialect: guess.dialect, shape: guess.shape, take, dataStart, firstLine: headerLines + 1, fixedDecimals };
+}
+
+function refuseTable(table: Table, fileName: string): void {
+  if (table.rows === 0) {
+    throw new InputError(
+      'no-numeric-data',
+      'No row of this file has a number in every column that is needed. Check the columns, or export the sweep again.',
+      fileName,
+    );
+  }
+  if (table.textLines > table.rows) throw notACurve(fileName);
+}
+
+function skippedFindings(table: Table): Finding[] {
+  const found: Finding[] = [];
+  if (table.truncatedLine > 0) {
+    found.push(
+      finding(
+        'truncated-last-row',
+        `Line ${table.truncatedLine}, the last one, is cut off; it was left out. Copy or export the file again if it should go on.`,
+        { line: table.truncatedLine },
+      ),
+    );
+  }
+  if (table.secondTableLine > 0) {
+    found.push(
+      finding(
+        'rows-skipped',
+        `Line ${table.secondTableLine} starts a second table. Only the first was read; put the second into a file of its own.`,
+        { firstLine: table.secondTableLine },
+      ),
+    );
+  }
+  const [first] = table.skipped;
+  if (first) {
+    const count = table.skippedCount;
+    const others =
+      count > 1 ? ` The other ${count - 1 === 1 ? 'one is' : `${count - 1} are`} listed with the reading.` : '';
+    found.push(
+      finding(
+        'rows-skipped',
+        `${count} ${count === 1 ? 'row was' : 'rows were'} left out. Line ${first.line} ${first.reason}.${others}`,
+        { rows: count, firstLine: first.line },
+      ),
+    );
+  }
+  return found;
+}
+
+/** Whether the phase has the sign that the magnitude asks for; a reversed one is reported, never turned by itself. */
+function checkSign(points: Points, isPair: boolean, findings: Finding[]): Guess {
+  const guess = (confidence: number, settled: boolean, reason: string): Guess => ({
+    confidence,
+    settled,
+    reason,
+    toldByPerson: false,
+  });
+  const { frequency, first, second } = points;
+  if (!second) return guess(1, true, words.noPhase);
+  const lnMagnitude = first.map((value, i) => Math.log(isPair ? Math.hypot(value, second[i]!) : value));
+  const phase = isPair ? second.map((value, i) => Math.atan2(value, first[i]!)) : second;
+  const { asWritten, turned } = phaseMisfit(frequency, lnMagnitude, phase);
+  if (asWritten > 15 && turned < 30 && turned < 0.5 * asWritten) {
+    findings.push(
+      finding(
+        'phase-sign-flipped',
+        `The phase looks reversed: it fits the magnitude within ${turned.toFixed(1)}° with the other sign, and within ${asWritten.toFixed(0)}° as it is. Turn the sign in the reading if the file counts capacitive phase as positive.`,
+        { asWrittenDeg: asWritten, turnedDeg: turned },
+      ),
+    );
+    return guess(0.3, false, words.signLooksTurned);
+  }
+  const isClear = turned > 3 * asWritten + 3;
+  return isClear ? guess(0.98, true, words.signFits(asWritten)) : guess(0.8, false, words.signOpen);
+}
+
+function readingOf(found: Recognised, table: Table, overrides: ReadingOverrides, sign: Guess): Reading {
+  const { text, guess, layout, columns, units } = found;
+  return {
+    format: 'text',
+    encoding: text.encoding,
+    ...guess.dialect,
+    headerLines: layout.headerLines,
+    columns: columns.kinds.slice(0, 64),
+    frequencyUnit: units.frequency.unit,
+    magnitudeUnit: units.magnitude.unit,
+    phaseUnit: units.phase.unit,
+    phaseSign: overrides.phaseSign ?? 'as-written',
+    columnNames: layout.columnNames.slice(0, 64),
+    guesses: guessesOf(found, overrides, overrides.phaseSign ? told : sign),
+    skippedRows: table.skipped,
+    skippedCount: table.skippedCount,
+    rows: table.rows,
+    comments: [...layout.comments, ...table.comments].slice(0, 200),
+  };
+}

@@ -1,0 +1,116 @@
+import { headingsIn, knownMeanings, meaningOf } from './column-names.js';
+import { commentAt, remarkAt, withoutMark } from './comments.js';
+import { SEPARATOR_CODE } from './dialect.js';
+import type { Characters } from './encoding.js';
+import { type Field, splitRow } from './row.js';
+import { hasInk } from './sample.js';
+import type { ScanPlan, Table } from './scan-rows.js';
+
+interface LineAt {
+  readonly start: number;
+  readonly end: number;
+  readonly line: number;
+  readonly isLast: boolean; // no line end follows: it may be cut off
+}
+
+const LISTED_MOST = 200;
+const LINE_LENGTH_MOST = 1_000_000; // a longer line is no row of a table
+
+/** Takes one line in the careful way: quotes, units behind numbers, thousands marks, remarks; or says why it is no row. */
+export function slowRow(text: Characters, plan: ScanPlan, table: Table, at: LineAt): void {
+  const { codes } = text;
+  if (!hasInk(codes, at.start, at.end)) return;
+  const comment = commentAt(codes, at.start, at.end);
+  if (comment === 'yes') keepComment(text, table, at);
+  else if (at.end - at.start > LINE_LENGTH_MOST) skip(table, at, 'is too long for a row of data');
+  else {
+    const fields = splitRow(text, at.start, at.end, plan.dialect);
+    const refusal = take(text, fields, plan, table, at);
+    if (refusal === undefined || takeBeforeRemark(text, plan, table, at)) return;
+    if (comment === 'maybe') keepComment(text, table, at);
+    else refuseRow(text, plan, table, at, fields, refusal);
+  }
+}
+
+/** A row with a remark behind it: the row is taken, the remark kept as a comment. */
+function takeBeforeRemark(text: Characters, plan: ScanPlan, table: Table, at: LineAt): boolean {
+  const remark = remarkAt(text.codes, at.start, at.end, SEPARATOR_CODE[plan.dialect.separator]);
+  if (remark >= at.end) return false;
+  const fields = splitRow(text, at.start, remark, plan.dialect);
+  if (take(text, fields, plan, table, { ...at, isLast: false }) !== undefined) return false;
+  keepComment(text, table, { ...at, start: remark });
+  return true;
+}
+
+function refuseRow(
+  text: Characters,
+  plan: ScanPlan,
+  table: Table,
+  at: LineAt,
+  fields: readonly Field[],
+  refusal: string,
+): void {
+  const isWords = fields.every((field) => field.kind === 'text' || field.kind === 'empty');
+  if (at.isLast && !isWords) table.truncatedLine = at.line;
+  else if (isWords && table.rows > 0 && startsTable(text, plan, at)) table.secondTableLine = at.line;
+  else {
+    if (isWords) table.textLines += 1;
+    skip(table, at, refusal);
+  }
+}
+
+/** Puts the row into the table; returns why not, where it does not fit. */
+function take(
+  text: Characters,
+  fields: readonly Field[],
+  plan: ScanPlan,
+  table: Table,
+  at: LineAt,
+): string | undefined {
+  const wanted = plan.shape.fields;
+  const isShort = plan.take.some(({ column }) => column >= fields.length);
+  const isLong = fields.slice(wanted).some((field) => field.kind === 'number');
+  if (isShort || isLong || (at.isLast && fields.length < wanted)) {
+    return `has ${fields.length} ${fields.length === 1 ? 'column' : 'columns'}, the rows around it have ${wanted}`;
+  }
+  for (const { column } of plan.take) {
+    const field = fields[column] as Field;
+    if (field.kind === 'number') continue;
+    if (field.kind === 'gap' || field.kind === 'empty') return `has no number in column ${column + 1}`;
+    return `column ${column + 1} reads “${text.decode(field.start, Math.min(field.end, field.start + 24))}”, which is no number`;
+  }
+  if (at.isLast && plan.fixedDecimals > (fields[wanted - 1]?.decimals ?? Number.POSITIVE_INFINITY))
+    return 'breaks off in its last number';
+  plan.take.forEach(({ column, exponent, unitExponent }, i) => {
+    const field = fields[column] as Field;
+    const own = field.unit && field.unit.kind !== 'level' ? field.unit.exponent - unitExponent : 0;
+    (table.values[i] as Float64Array)[table.rows] = shifted(field.value, exponent + own);
+  });
+  table.lines[table.rows] = at.line;
+  table.rows += 1;
+  return undefined;
+}
+
+/** value × 10^exponent, rounded once: the digits of the value with another exponent. */
+function shifted(value: number, exponent: number): number {
+  if (exponent === 0) return value;
+  const digits = String(value);
+  return digits.includes('e') ? value * 10 ** exponent : Number(`${digits}e${exponent}`);
+}
+
+function startsTable(text: Characters, plan: ScanPlan, at: LineAt): boolean {
+  const names = headingsIn(text.decode(at.start, Math.min(at.end, at.start + 2000)), plan.shape.fields, plan.dialect);
+  const meanings = names?.map(meaningOf) ?? [];
+  return knownMeanings(meanings) >= 2 && meanings.some((meaning) => meaning.kind === 'frequency');
+}
+
+function keepComment(text: Characters, table: Table, at: LineAt): void {
+  if (table.comments.length >= LISTED_MOST) return;
+  const words = withoutMark(text.decode(at.start, Math.min(at.end, at.start + 2000)));
+  if (words !== '') table.comments.push(words);
+}
+
+function skip(table: Table, at: LineAt, reason: string): void {
+  if (table.skipped.length < LISTED_MOST) table.skipped.push({ line: at.line, reason });
+  table.skippedCount += 1;
+}
