@@ -1,8 +1,8 @@
 import { createBrowserRouter, redirect } from 'react-router-dom';
 import { Loading } from './components/loading.js';
-import { RootLayout } from './components/root-layout.js';
 import { RouteError } from './components/route-error.js';
 import { session } from './lib/session.js';
+import { Root } from './pages/root.js';
 
 /** Pages of an account: without a session the sign-in form comes first, and then the page that was asked for. */
 function needsSession({ request }: { request: Request }) {
@@ -15,7 +15,7 @@ function needsSession({ request }: { request: Request }) {
 export const router = createBrowserRouter([
   {
     path: '/',
-    Component: RootLayout,
+    Component: Root,
     ErrorBoundary: RouteError,
     HydrateFallback: Loading,
     children: [

@@ -71,9 +71,7 @@ function TopBar({ children }: { children: ReactNode }) {
   const { hint } = useSessionState();
   const [showsKeys, setShowsKeys] = useState(false);
   return (
-    <header
-      className="sticky top-0 z-30 flex min-h-14 shrink-0 items-center gap-2 border-b border-line bg-ground px-3 sm:px-4"
-    >
+    <header className="sticky top-0 z-30 flex min-h-14 shrink-0 items-center gap-2 border-b border-line bg-ground px-3 sm:px-4">
       <Link
         to={hint ? '/home' : '/'}
         className="flex min-h-(--control) shrink-0 items-center gap-2 rounded-control pe-2 font-semibold text-ink no-underline"

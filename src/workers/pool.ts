@@ -1,13 +1,12 @@
 import { proxy } from 'comlink';
+import { refuseBySize } from '../../calculators/reading/size-limits.js';
 import { InputError } from '../../shared/errors.js';
 import type { Output } from '../../shared/output.js';
-import { text } from '../../shared/text.js';
 import type { CalculatorApi } from './calculate.worker.js';
 import type { Answer, CalculateRequest, OnProgress, ReadFile, ReadRequest } from './messages.js';
 import type { ReaderApi } from './reading.worker.js';
 import { type Job, WorkerPool } from './worker-pool.js';
 
-const MOST_TEXT_BYTES = 64 * 1024 * 1024;
 const LEAST_WORKERS = 1;
 const MOST_WORKERS = 4;
 
@@ -34,10 +33,11 @@ function unwrapped<T>(answer: Answer<T>): T {
 
 /** Reads a file away from the page. One that is too large is refused by its length, before a byte is read. */
 export function readInWorker(request: ReadRequest, onProgress: OnProgress = () => {}): Job<ReadOutcome> {
-  if (request.file.size > MOST_TEXT_BYTES) {
-    const message = text.unpack.tooLarge(request.file.size, MOST_TEXT_BYTES);
-    const refused = new InputError('file-too-large', message, request.fileName);
-    return { done: Promise.resolve({ refused, lines: [] }), stop: () => {} };
+  try {
+    refuseBySize(request.file.size, 'text', request.fileName);
+  } catch (error) {
+    if (!(error instanceof InputError)) throw error;
+    return { done: Promise.resolve({ refused: error, lines: [] }), stop: () => {} };
   }
   return readers.run(async (api) => {
     const answer = await api.read(request, proxy(onProgress));
