@@ -1,5 +1,6 @@
 import compression from 'compression';
 import express, { type Express } from 'express';
+import { speakInOurWords } from '../shared/schema-words.js';
 import { type AppInputs, makeParts } from './app-parts.js';
 import { clientPages } from './middleware/client-pages.js';
 import { jsonBody } from './middleware/json-body.js';
@@ -20,6 +21,7 @@ export interface App {
 
 /** Puts the server together; it listens to nothing and reads no environment. */
 export function createApp(inputs: AppInputs): App {
+  speakInOurWords();
   const endings: (() => Promise<void> | void)[] = [];
   const parts = makeParts(inputs, (end) => endings.push(end));
   const { measure, page } = metrics();

@@ -2,11 +2,12 @@ import { randomBytes } from 'node:crypto';
 import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join, resolve } from 'node:path';
 import { z } from 'zod';
+import { schemaWords } from '../shared/schema-words.js';
 
 const port = z.coerce.number().int().min(0).max(65_535);
 
 const EnvironmentSchema = z.object({
-  DATABASE_URL: z.string().regex(/^postgres(ql)?:\/\//, 'a postgres:// address'),
+  DATABASE_URL: z.string().regex(/^postgres(ql)?:\/\//, 'This has to be a postgres:// address.'),
   HUMMOCK_PORT: port.default(4180),
   HUMMOCK_HOST: z.string().min(1).default('127.0.0.1'),
   HUMMOCK_DATA_DIR: z.string().min(1).default('.data'),
@@ -18,7 +19,7 @@ const EnvironmentSchema = z.object({
   HUMMOCK_MAIL_FROM: z.string().min(3).default('Hummock <hummock@localhost>'),
   SMTP_URL: z
     .string()
-    .regex(/^smtps?:\/\//, 'an smtp:// or smtps:// address')
+    .regex(/^smtps?:\/\//, 'This has to be an smtp:// or smtps:// address.')
     .optional(), // none: letters stay in the data folder
 });
 
@@ -44,7 +45,7 @@ export class ConfigError extends Error {
 /** Read once, at the start; everything else is handed what it needs. */
 export function readConfig(environment: Readonly<Record<string, string | undefined>>): Config {
   const given = Object.fromEntries(Object.entries(environment).filter(([, value]) => value !== ''));
-  const parsed = EnvironmentSchema.safeParse(given);
+  const parsed = EnvironmentSchema.safeParse(given, { error: schemaWords });
   if (!parsed.success) {
     const lines = parsed.error.issues.map((issue) => `${issue.path.join('.')}: ${issue.message}`);
     throw new ConfigError(`The environment holds settings that cannot be used.\n${lines.join('\n')}`);

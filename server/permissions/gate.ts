@@ -45,7 +45,7 @@ function targetOf(params: Record<string, string>): Target | undefined {
 export function gate(access: Access): RequestHandler {
   return async (request, _response, next) => {
     const known = routeOf(request.method, request.baseUrl + request.path);
-    if (!known) throw new AppError('not-found', text.server.notFound);
+    if (!known) throw new AppError('not-found', text.server.noRoute);
     if (known.rule !== 'open') {
       const actor = actorOf(request);
       const isNamed = Object.values(known.params).every((value) => z.uuid().safeParse(value).success);

@@ -1,7 +1,26 @@
 import type { Role } from '../contracts/team.js';
 
 /** What the server says when it refuses: what happened, and what to do. */
+const issues = {
+  missing: 'This is needed.',
+  wrongType: (expected: string) => `This has to be of the kind ${expected}.`,
+  email: 'Write an address like name@example.org.',
+  format: 'This is not written the way it has to be.',
+  oneOf: (values: string) => `This has to be one of: ${values}.`,
+  tooShort: (least: number | bigint) => `Use at least ${least} characters.`,
+  tooLong: (most: number | bigint) => `Use at most ${most} characters.`,
+  tooFew: (least: number | bigint) => `The list needs at least ${least}.`,
+  tooMany: (most: number | bigint) => `The list takes at most ${most}.`,
+  atLeast: (least: number | bigint) => `This has to be ${least} or more.`,
+  moreThan: (least: number | bigint) => `This has to be more than ${least}.`,
+  atMost: (most: number | bigint) => `This has to be ${most} or less.`,
+  lessThan: (most: number | bigint) => `This has to be less than ${most}.`,
+  unknownFields: (names: string) => `Not known here: ${names}.`,
+  other: 'This does not fit here.',
+} as const;
+
 export const server = {
+  issues,
   notSignedIn: 'Sign in to go on.',
   sessionEnded: 'Your session has ended. Sign in again; what you were doing stays on the page.',
   signInFailed: 'E-mail and password do not match. Check both, or set a new password.',
