@@ -20,6 +20,7 @@ export interface AppInputs {
   readonly clientDir: string;
   readonly trustProxy: string | number | false;
   readonly now?: () => Date;
+  readonly beatMs?: number; // between two checks of an open event stream
   readonly allowances?: Partial<Record<AllowanceName, Allowance>>;
 }
 

@@ -7,6 +7,7 @@ import { healthRouter } from './health/routes.js';
 import { itemRouter } from './items/routes.js';
 import { ItemService } from './items/service.js';
 import { meRouter } from './me/routes.js';
+import { measurementRouters } from './measurement-routers.js';
 import { projectRouter } from './projects/routes.js';
 import { ProjectService } from './projects/service.js';
 import { BinService } from './teams/bin.js';
@@ -23,5 +24,6 @@ export function apiRouters(parts: AppParts): Router[] {
     projectRouter(new ProjectService(dataSource, access)),
     itemRouter(new ItemService(dataSource, access)),
     activityRouter(new ActivityService(dataSource, access)),
+    ...measurementRouters(parts),
   ];
 }

@@ -35,12 +35,19 @@ export class SourceService {
   ) {}
 
   /** Reads the received file and keeps it with its sweep: all of it in one transaction, or nothing. */
-  async add(actor: Actor, projectId: string, file: ReceivedFile, input: CreateSweep): Promise<SweepRow> {
+  async add(
+    actor: Actor,
+    projectId: string,
+    file: ReceivedFile,
+    input: CreateSweep,
+    abandoned?: AbortSignal,
+  ): Promise<SweepRow> {
     const grant = await this.access.require(actor, 'source:create', { projectId });
     await requireNamedItems(this.dataSource.manager, projectId, input);
     await this.refuseKnown(projectId, file.sha256);
     const { path, fileName } = file;
     const read = await readOrRefuse(this.reader, { path, fileName, overrides: input.reading });
+    abandoned?.throwIfAborted();
     try {
       return await retriedTransaction(this.dataSource, async (manager) => {
         const sourceFileId = await this.keepFile(manager, actor, projectId, file);

@@ -4,6 +4,7 @@ import { join } from 'node:path';
 import { pipeline } from 'node:stream/promises';
 import type { DataSource, EntityManager } from 'typeorm';
 import { canonicalJson } from '../../shared/canonical-json.js';
+import type { Page, PageQuery } from '../../shared/contracts/paging.js';
 import type { ReadingOverrides } from '../../shared/contracts/reading.js';
 import type { SweepRevision, SweepRow } from '../../shared/contracts/sweep.js';
 import { AppError } from '../../shared/errors.js';
@@ -11,6 +12,7 @@ import { text } from '../../shared/text.js';
 import { recordChange } from '../activity/record-change.js';
 import { lockRow } from '../database/edit-row.js';
 import { SweepEntity, SweepPointsEntity, SweepRevisionEntity } from '../database/entities/sweep.entity.js';
+import { pageOfRows } from '../database/paging.js';
 import type { FileStore } from '../files/file-store.js';
 import type { Access } from '../permissions/access.js';
 import type { Actor } from '../permissions/actor.js';
@@ -29,10 +31,11 @@ export class RevisionService {
     private readonly temporaryFolder: string,
   ) {}
 
-  async list(actor: Actor, sweepId: string): Promise<SweepRevision[]> {
+  async list(actor: Actor, sweepId: string, query: PageQuery): Promise<Page<SweepRevision>> {
     await this.access.require(actor, 'sweep:read', { sweepId });
-    const order = { number: 'ASC' } as const;
-    return (await this.dataSource.manager.find(SweepRevisionEntity, { where: { sweepId }, order })).map(toRevision);
+    const rows = this.dataSource.manager.createQueryBuilder(SweepRevisionEntity, 'r');
+    const { items, next } = await pageOfRows(rows.where('r.sweepId = :sweepId', { sweepId }), query);
+    return { items: items.map(toRevision), next };
   }
 
   async points(actor: Actor, revisionId: string): Promise<{ sha256: string; content: Buffer }> {

@@ -29,4 +29,6 @@ export const measurements = {
     `The server knows this calculator up to version ${version}. Load the page again and run once more.`,
   setupNameTaken: (name: string) => `The team has a setup named “${name}” already. Choose another name.`,
   limitsNameTaken: (name: string) => `The team has limits named “${name}” already. Choose another name.`,
+  tooManyStreams: (most: number) =>
+    `You have ${most} pages open on this server that follow changes. Close some, then load this one again.`,
 } as const;
