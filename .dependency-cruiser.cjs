@@ -32,7 +32,10 @@ module.exports = {
       'shared-packages',
       'shared/ runs everywhere: only zod, d3-scale, d3-shape and d3-array.',
       { path: '^shared/' },
-      { pathNot: ['^(shared|calculators|server|src|scripts|public|tests)/', packages(SHARED_PACKAGES)] },
+      {
+        couldNotResolve: false,
+        pathNot: ['^(shared|calculators|server|src|scripts|public|tests)/', packages(SHARED_PACKAGES)],
+      },
     ),
     rule(
       'calculators-know-no-side',
@@ -44,7 +47,10 @@ module.exports = {
       'calculators-stay-pure',
       'calculators/ runs in browsers, threads and scripts alike: numeric packages only, no React, no Node (the command line apart).',
       { path: '^calculators/', pathNot: CLI },
-      { pathNot: ['^(shared|calculators|server|src|scripts|public|tests)/', packages(NUMERIC_PACKAGES)] },
+      {
+        couldNotResolve: false,
+        pathNot: ['^(shared|calculators|server|src|scripts|public|tests)/', packages(NUMERIC_PACKAGES)],
+      },
     ),
     rule(
       'command-line-without-screens',

@@ -68,9 +68,10 @@ async function runningCluster({ home, dataDir, user, programs, say }) {
   });
   const running = postmasterOf(dataDir);
   if (running) {
-    const orphaned = !isRunning(readJson(starterPath)); // its starter was killed: whoever finds it takes it over
-    if (orphaned) writePrivate(starterPath, JSON.stringify(thisProcess()));
-    return cluster(running, orphaned);
+    const starter = readJson(starterPath);
+    const isOrphan = !isRunning(starter); // its starter was killed: whoever finds it takes it over
+    if (isOrphan) writePrivate(starterPath, JSON.stringify(thisProcess()));
+    return cluster(running, isOrphan || starter.pid === process.pid);
   }
   await clearStaleLock(dataDir, say);
   const portPath = join(home, 'port');
