@@ -1,0 +1,111 @@
+import { type KeyboardEvent, type SubmitEvent, useEffect, useId, useRef, useState } from 'react';
+import { formatPlain } from '../../../shared/quantity-text.js';
+import { text } from '../../../shared/text.js';
+import { Button } from '../button.js';
+import { inputClass } from '../field.js';
+import { fitAxis, setRange, swapScale } from './chart-actions.js';
+import type { AxisName, ChartView } from './chart-view.js';
+import type { LocalPoint } from './gestures/gesture-target.js';
+import { readEnds } from './read-ends.js';
+
+interface AxisDialogProps {
+  readonly view: ChartView;
+  readonly axis: AxisName;
+  readonly at: LocalPoint;
+  readonly locale: string | undefined;
+  readonly onClose: () => void;
+}
+const words = text.chart.controls;
+
+/** Exact values of one axis, and whether it is logarithmic or linear. */
+export function AxisDialog({ view, axis, at, locale, onClose }: AxisDialogProps) {
+  const id = useId();
+  const box = useRef<HTMLFormElement>(null);
+  const [kind, setKind] = useState(view.kindOf(axis));
+  const [ends, setEnds] = useState(() => view.rangeOf(axis).map((value) => formatPlain(value, 4, locale)));
+  const [error, setError] = useState('');
+  useEffect(() => {
+    box.current?.querySelector('input')?.select();
+    const outside = (event: Event) => {
+      if (event.target instanceof Node && !box.current?.contains(event.target)) onClose();
+    };
+    document.addEventListener('pointerdown', outside, true);
+    return () => document.removeEventListener('pointerdown', outside, true);
+  }, [onClose]);
+  const submit = (event: SubmitEvent) => {
+    event.preventDefault();
+    const read = readEnds(ends, axis, kind, locale);
+    if (typeof read === 'string') return setError(read);
+    if (kind !== view.kindOf(axis) && (axis === 'frequency' || axis === 'magnitude')) swapScale(view, axis);
+    setRange(view, axis, read[0], read[1]);
+    onClose();
+  };
+  const keys = (event: KeyboardEvent) => {
+    if (event.key !== 'Escape') return;
+    event.stopPropagation();
+    onClose();
+  };
+  const { widthPx, heightPx } = view.currentLayout();
+  const place = {
+    left: Math.min(at.x + 8, Math.max(0, widthPx - 252)),
+    top: Math.min(at.y, Math.max(0, heightPx - 210)),
+  };
+  return (
+    <form
+      ref={box}
+      role="dialog"
+      aria-label={words.axisDialog(text.chart.quantity[axis])}
+      className="chart-popover chart-axis-dialog"
+      style={place}
+      onSubmit={submit}
+      onKeyDown={keys}
+      noValidate
+    >
+      <p className="chart-popover-title">{text.chart.axis[axis]}</p>
+      <div className="chart-ends">
+        {[words.lowest, words.highest].map((label, i) => (
+          <label key={label}>
+            {label}
+            <input
+              className={inputClass}
+              inputMode="text"
+              value={ends[i]}
+              aria-invalid={error !== '' || undefined}
+              aria-describedby={error ? `${id}-error` : undefined}
+              onChange={(event) => setEnds(ends.map((old, k) => (k === i ? event.target.value : old)))}
+            />
+          </label>
+        ))}
+      </div>
+      {(axis === 'frequency' || axis === 'magnitude') && (
+        <fieldset className="chart-choice">
+          <legend className="sr-only">{text.chart.axis[axis]}</legend>
+          {(['log', 'linear'] as const).map((choice) => (
+            <label key={choice}>
+              <input type="radio" name={`${id}-kind`} checked={kind === choice} onChange={() => setKind(choice)} />
+              {words[choice]}
+            </label>
+          ))}
+        </fieldset>
+      )}
+      {error && (
+        <p id={`${id}-error`} role="alert" className="chart-error">
+          {error}
+        </p>
+      )}
+      <div className="chart-row">
+        <Button type="submit" look="primary">
+          {words.setRange}
+        </Button>
+        <Button
+          onClick={() => {
+            fitAxis(view, axis);
+            onClose();
+          }}
+        >
+          {words.fitAll}
+        </Button>
+      </div>
+    </form>
+  );
+}

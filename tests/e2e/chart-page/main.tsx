@@ -1,0 +1,76 @@
+import '../../../src/styles.css';
+import { StrictMode, useMemo, useState } from 'react';
+import { createRoot } from 'react-dom/client';
+import { type ChartContent, type ChartState, FITTED_CHART } from '../../../shared/drawing/chart-input.js';
+import { SweepChart } from '../../../src/components/chart/sweep-chart.js';
+import { driverPoints, someSweeps } from './curves.js';
+
+/** The chart alone, told by the address: ?count=2&points=600&theme=dark&tall=1&view=real-imaginary */
+const asked = new URLSearchParams(location.search);
+const count = Number(asked.get('count') ?? 2);
+const points = Number(asked.get('points') ?? 600);
+document.documentElement.dataset.theme = asked.get('theme') ?? 'light';
+document.documentElement.dataset.density = asked.get('density') ?? 'comfortable';
+
+function contentAsked(): ChartContent {
+  const sweeps = someSweeps(count, points);
+  const model = driverPoints({ fsHz: 31.9, reOhm: 5.9, resOhm: 39, qms: 5, leHenry: 2.1e-4, points: 300 });
+  const isFull = asked.has('full');
+  return {
+    sweeps: isFull ? sweeps.map((s, k) => (k === 0 ? { ...s, isReference: true, masked: maskAround(s.points.frequencyHz) } : s)) : sweeps,
+    title: asked.get('title') ?? 'Rehearsal room 2, mid-woofers',
+    revision: 'Revision 3',
+    ...(isFull
+      ? {
+          models: [{ id: 'model', label: 'driver-fit', points: model }],
+          markers: [{ frequencyHz: 31.8, label: 'fs' }],
+          bands: [
+            {
+              kind: 'limits' as const,
+              quantity: 'magnitude' as const,
+              label: 'Limits of lot 7',
+              frequencyHz: model.frequencyHz,
+              low: model.frequencyHz.map((f) => 5.2 + 0.01 * Math.sqrt(f)),
+              high: model.frequencyHz.map((f) => 9 + f / 800),
+            },
+          ],
+        }
+      : {}),
+  };
+}
+const maskAround = (hz: Float64Array): Uint8Array => Uint8Array.from(hz, (f) => (f > 47 && f < 53 ? 1 : 0));
+
+function Page() {
+  const [state, setState] = useState<ChartState>({ ...FITTED_CHART, ...JSON.parse(asked.get('state') ?? '{}') });
+  const [activeSweepId, setActive] = useState('sweep-1');
+  const [log, setLog] = useState<string[]>([]);
+  const base = useMemo(contentAsked, []);
+  const content = useMemo(() => ({ ...base, activeSweepId }), [base, activeSweepId]);
+  const say = (words: string) => setLog((old) => [...old, words]);
+  return (
+    <main className="p-4">
+      <SweepChart
+        className="h-[620px] max-h-[92vh]"
+        content={content}
+        state={state}
+        onStateChange={(next, change) => {
+          setState(next);
+          say(change);
+        }}
+        onActiveSweep={setActive}
+        onMarker={(hz) => say(`marker ${hz}`)}
+        onNote={(hz) => say(`note ${hz}`)}
+        onReference={() => say('reference')}
+        {...(asked.has('locale') ? { locale: asked.get('locale') ?? 'en' } : {})}
+      />
+      <output data-testid="state">{JSON.stringify(state)}</output>
+      <output data-testid="log">{log.join(',')}</output>
+      {asked.has('tall') && <div style={{ height: 2000 }} />}
+    </main>
+  );
+}
+createRoot(document.getElementById('root') ?? document.body).render(
+  <StrictMode>
+    <Page />
+  </StrictMode>,
+);
