@@ -3,9 +3,9 @@ import { isBinary } from './sniff.js';
 import { lineEnd, nextLine } from './text/characters.js';
 import { commentAt } from './text/comments.js';
 import { charactersOf, type Encoding, readCharacters } from './text/encoding.js';
-import type { ColumnKind } from './text/guess-columns.js';
+import type { ColumnKind } from './text/recognise/guess-columns.js';
+import { hasInk } from './text/recognise/sample.js';
 import { splitRow } from './text/row.js';
-import { hasInk } from './text/sample.js';
 
 const LINES_MOST = 60;
 const LINE_LENGTH_MOST = 400;

@@ -1,4 +1,5 @@
 import { MINUS, PLUS } from './characters.js';
+import { longDecimal } from './long-decimal.js';
 
 let endOfDecimal = -1;
 /** Where the number that `scanDecimal` read last ended, or -1 where it found none. */
@@ -44,11 +45,14 @@ export function scanDecimal(codes: Uint8Array, from: number, decimalCode: number
   endOfDecimal = p;
   const letter = code | 32; // e, E, d, D
   if (letter === 101 || letter === 100) exponent += scanExponent(codes, p + 1);
+  let value: number;
   if (mantissa < EXACT && exponent >= -22 && exponent <= 22) {
-    const value = exponent < 0 ? mantissa / POWERS_OF_TEN[-exponent]! : mantissa * POWERS_OF_TEN[exponent]!;
-    return isNegative ? -value : value;
+    value = exponent < 0 ? mantissa / POWERS_OF_TEN[-exponent]! : mantissa * POWERS_OF_TEN[exponent]!;
+  } else {
+    value = longDecimal(codes, digitsFrom, p, decimalCode, exponent);
+    if (Number.isNaN(value)) value = carefully(codes, digitsFrom, p, decimalCode, exponent);
   }
-  return carefully(codes, digitsFrom, decimalCode, shift, isNegative);
+  return isNegative ? -value : value;
 }
 
 /** The exponent after its letter; moves the end past it. Without digits the letter belongs to a unit and is left. */
@@ -67,20 +71,9 @@ function scanExponent(codes: Uint8Array, from: number): number {
   return isNegative ? -value : value;
 }
 
-/** The slow way, for many digits and large exponents: the digits as text, with the mark and the exponent Number() knows. */
-function carefully(codes: Uint8Array, from: number, decimalCode: number, shift: number, isNegative: boolean): number {
-  let text = '';
-  let exponent = shift;
-  for (let p = from; p < endOfDecimal; p += 1) {
-    const code = codes[p]!;
-    if ((code | 32) === 101 || (code | 32) === 100) {
-      const end = endOfDecimal;
-      exponent += scanExponent(codes, p + 1);
-      endOfDecimal = end;
-      break;
-    }
-    text += code === decimalCode ? '.' : String.fromCharCode(code);
-  }
-  const value = Number(exponent === 0 ? text : `${text}e${exponent}`);
-  return isNegative ? -value : value;
+/** The slow way, for very many digits and large exponents: the digits as text with the exponent that makes them an integer's. */
+function carefully(codes: Uint8Array, from: number, to: number, decimalCode: number, exponent: number): number {
+  let digits = '';
+  for (let p = from; p < to; p += 1) if (codes[p] !== decimalCode) digits += String.fromCharCode(codes[p]!);
+  return Number(`${digits}e${exponent}`);
 }

@@ -2,17 +2,17 @@ import type { Guess, Reading, ReadingOverrides } from '../../../shared/contracts
 import { InputError } from '../../../shared/errors.js';
 import type { Finding } from '../../../shared/output.js';
 import { readingText as words } from '../../../shared/text/reading.js';
-import { type Points, toPoints } from './curve.js';
 import { readCharacters } from './encoding.js';
-import { finding } from './findings.js';
-import { told } from './guess-units.js';
-import { phaseMisfit } from './minimum-phase.js';
-import { guessesOf, type Recognised, recognise } from './recognise.js';
-import { notACurve } from './refusals.js';
-import { hasInk } from './sample.js';
-import { attachedUnit } from './sample-curve.js';
-import { type ScanPlan, scanRows, type Table, type TakenColumn, type Watch } from './scan-rows.js';
-import { thin } from './thin.js';
+import { told } from './recognise/guess-units.js';
+import { phaseMisfit } from './recognise/minimum-phase.js';
+import { guessesOf, type Recognised, recognise } from './recognise/recognise.js';
+import { notACurve } from './recognise/refusals.js';
+import { hasInk } from './recognise/sample.js';
+import { attachedUnit } from './recognise/sample-curve.js';
+import { type Points, toPoints } from './rows/curve.js';
+import { finding } from './rows/findings.js';
+import { type ScanPlan, scanRows, type Table, type TakenColumn, type Watch } from './rows/scan-rows.js';
+import { thin } from './rows/thin.js';
 
 export interface TextReading {
   readonly points: Points;

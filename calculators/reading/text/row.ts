@@ -13,7 +13,7 @@ export interface Field {
   readonly end: number;
   readonly kind: 'number' | 'gap' | 'empty' | 'text';
   readonly value: number;
-  readonly unit?: UnitWord | undefined;
+  readonly unit: UnitWord | undefined;
   readonly decimals: number; // digits after the mark, for telling a row that was cut off
 }
 
@@ -50,6 +50,7 @@ function endOfField(codes: Uint8Array, from: number, end: number, separator: num
 
 /** "10 Hz 7.4 Ohm": with blanks as separator a unit standing alone belongs to the number before it. */
 function joinUnits(fields: Field[], text: Characters): Field[] {
+  if (fields.every((field) => field.kind !== 'text')) return fields;
   const joined: Field[] = [];
   for (const field of fields) {
     const before = joined.at(-1);
@@ -72,24 +73,40 @@ function parseField(text: Characters, from: number, to: number, dialect: Dialect
     while (end > start && isBlank(codes[end - 1]!)) end -= 1;
     while (start < end && isBlank(codes[start]!)) start += 1;
   }
-  const plain = { start, end, value: Number.NaN, decimals: 0 };
-  if (start === end) return { ...plain, kind: 'empty' };
+  if (start === end) return other('empty', start, end);
   const first = codes[start]!;
   const mayBeNumber =
     isDigit(first) || first === MINUS || first === PLUS || first === DECIMAL_CODE[dialect.decimalMark];
   const number = mayBeNumber || (first | 32) === 114 ? parseNumber(text, start, end, dialect) : undefined; // R47
-  if (number) return { ...plain, ...number, kind: 'number' };
-  if (end - start <= 12 && GAP.test(text.decode(start, end))) return { ...plain, kind: 'gap' };
-  return { ...plain, kind: 'text' };
+  if (number) return number;
+  if (end - start <= 12 && GAP.test(text.decode(start, end))) return other('gap', start, end);
+  return other('text', start, end);
 }
 
-interface ParsedNumber {
-  readonly value: number;
-  readonly unit?: UnitWord | undefined;
-  readonly decimals: number;
-}
+const other = (kind: Field['kind'], start: number, end: number): Field => ({
+  start,
+  end,
+  kind,
+  value: Number.NaN,
+  unit: undefined,
+  decimals: 0,
+});
+const numberField = (
+  start: number,
+  end: number,
+  value: number,
+  unit: UnitWord | undefined,
+  decimals: number,
+): Field => ({
+  start,
+  end,
+  kind: 'number',
+  value,
+  unit,
+  decimals,
+});
 
-function parseNumber(text: Characters, start: number, end: number, dialect: Dialect): ParsedNumber | undefined {
+function parseNumber(text: Characters, start: number, end: number, dialect: Dialect): Field | undefined {
   const decimalCode = DECIMAL_CODE[dialect.decimalMark];
   const plain = plainDigits(text.codes, start, end, dialect);
   if (!plain) return undefined;
@@ -99,11 +116,11 @@ function parseNumber(text: Characters, start: number, end: number, dialect: Dial
   if (decimalCode === COMMA && plain.codes[stop - 1] === COMMA) return undefined; // "10, 7": the comma parts columns
   const decimals = decimalsBefore(plain.codes, plain.start, stop, decimalCode);
   let unitFrom = stop - plain.end + end;
-  if (unitFrom >= end) return { value, decimals };
+  if (unitFrom >= end) return numberField(start, end, value, undefined, decimals);
   while (unitFrom < end && isBlank(text.codes[unitFrom]!)) unitFrom += 1;
   if (end - unitFrom > 12) return undefined;
   const unit = unitWord(text.decode(unitFrom, end));
-  return unit ? { value, unit, decimals } : parseMarked(text, start, end);
+  return unit ? numberField(start, end, value, unit, decimals) : parseMarked(text, start, end);
 }
 
 function decimalsBefore(codes: Uint8Array, start: number, stop: number, decimalCode: number): number {
@@ -115,13 +132,13 @@ function decimalsBefore(codes: Uint8Array, start: number, stop: number, decimalC
 }
 
 /** 4R7 and 4k7: the letter stands where the decimal mark would (IEC 60062). Undefined for anything else. */
-function parseMarked(text: Characters, start: number, end: number): ParsedNumber | undefined {
+function parseMarked(text: Characters, start: number, end: number): Field | undefined {
   if (end - start > 12) return undefined;
   const found = /^([+-]?\d*)([RrkKM])(\d+)$/.exec(text.decode(start, end));
   if (!found) return undefined;
   const [, whole = '', letter = '', fraction = ''] = found;
   const unit = unitWord(letter) as UnitWord;
-  return { value: Number(`${whole || '0'}.${fraction}`), unit, decimals: fraction.length };
+  return numberField(start, end, Number(`${whole || '0'}.${fraction}`), unit, fraction.length);
 }
 
 interface PlainDigits {

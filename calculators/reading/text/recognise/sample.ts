@@ -1,5 +1,5 @@
-import { lineEnd, nextLine } from './characters.js';
-import { commentAt } from './comments.js';
+import { lineEnd, nextLine } from '../characters.js';
+import { commentAt } from '../comments.js';
 
 export interface Line {
   readonly start: number;

@@ -1,9 +1,9 @@
-import { lineEnd, nextLine } from './characters.js';
+import { lineEnd, nextLine } from '../characters.js';
+import { commentAt, withoutMark } from '../comments.js';
+import type { Characters } from '../encoding.js';
+import { type Field, splitRow } from '../row.js';
 import { type ColumnMeaning, headingsIn, knownMeanings, meaningOf } from './column-names.js';
-import { commentAt, withoutMark } from './comments.js';
-import type { Characters } from './encoding.js';
 import type { DialectGuess, Shape } from './guess-dialect.js';
-import { type Field, splitRow } from './row.js';
 import { hasInk } from './sample.js';
 
 /** Where the data starts and what the lines above say. */

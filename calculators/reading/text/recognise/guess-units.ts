@@ -1,10 +1,10 @@
-import type { Guess, Reading, ReadingOverrides } from '../../../shared/contracts/reading.js';
-import { readingText as words } from '../../../shared/text/reading.js';
+import type { Guess, Reading, ReadingOverrides } from '../../../../shared/contracts/reading.js';
+import { readingText as words } from '../../../../shared/text/reading.js';
+import type { UnitWord } from '../units.js';
 import type { ColumnMeaning } from './column-names.js';
 import type { ColumnsGuess } from './guess-columns.js';
 import type { DialectGuess } from './guess-dialect.js';
 import { attachedUnit, sampleColumn } from './sample-curve.js';
-import type { UnitWord } from './units.js';
 
 export interface UnitChoice<Unit extends string> {
   readonly unit: Unit;

@@ -1,8 +1,8 @@
-import { BLANK, CR, isBlank, isLineEnd, LF, lineEnd, nextLine, QUOTE, TAB } from './characters.js';
-import { decimalEnd, scanDecimal } from './decimal.js';
-import { DECIMAL_CODE, type Dialect, SEPARATOR_CODE } from './dialect.js';
-import type { Characters } from './encoding.js';
-import type { Shape } from './guess-dialect.js';
+import { BLANK, CR, isBlank, isLineEnd, LF, lineEnd, nextLine, QUOTE, TAB } from '../characters.js';
+import { decimalEnd, scanDecimal } from '../decimal.js';
+import { DECIMAL_CODE, type Dialect, SEPARATOR_CODE } from '../dialect.js';
+import type { Characters } from '../encoding.js';
+import type { Shape } from '../recognise/guess-dialect.js';
 import { slowRow } from './slow-row.js';
 
 /** A column to take: where it stands in the row, and the power of ten its unit adds (kHz: 3). */

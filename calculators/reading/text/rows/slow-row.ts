@@ -1,9 +1,9 @@
-import { headingsIn, knownMeanings, meaningOf } from './column-names.js';
-import { commentAt, remarkAt, withoutMark } from './comments.js';
-import { SEPARATOR_CODE } from './dialect.js';
-import type { Characters } from './encoding.js';
-import { type Field, splitRow } from './row.js';
-import { hasInk } from './sample.js';
+import { commentAt, remarkAt, withoutMark } from '../comments.js';
+import { SEPARATOR_CODE } from '../dialect.js';
+import type { Characters } from '../encoding.js';
+import { headingsIn, knownMeanings, meaningOf } from '../recognise/column-names.js';
+import { hasInk } from '../recognise/sample.js';
+import { type Field, splitRow } from '../row.js';
 import type { ScanPlan, Table } from './scan-rows.js';
 
 interface LineAt {

@@ -1,5 +1,5 @@
+import type { UnitWord } from '../units.js';
 import type { DialectGuess } from './guess-dialect.js';
-import type { UnitWord } from './units.js';
 
 /** What stands behind the numbers of a column: the same unit everywhere, several, or none. */
 export interface AttachedUnit {

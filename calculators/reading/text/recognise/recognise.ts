@@ -1,6 +1,6 @@
-import type { Guess, Reading, ReadingOverrides } from '../../../shared/contracts/reading.js';
-import { readingText as words } from '../../../shared/text/reading.js';
-import type { Characters } from './encoding.js';
+import type { Guess, Reading, ReadingOverrides } from '../../../../shared/contracts/reading.js';
+import { readingText as words } from '../../../../shared/text/reading.js';
+import type { Characters } from '../encoding.js';
 import { type ColumnsGuess, guessColumns } from './guess-columns.js';
 import { type DialectGuess, guessDialect } from './guess-dialect.js';
 import { guessUnits, told, type UnitsGuess } from './guess-units.js';

@@ -1,5 +1,5 @@
-import type { ReadingOverrides } from '../../../shared/contracts/reading.js';
-import { InputError } from '../../../shared/errors.js';
+import type { ReadingOverrides } from '../../../../shared/contracts/reading.js';
+import { InputError } from '../../../../shared/errors.js';
 import type { ColumnKind } from './guess-columns.js';
 import type { DialectGuess, Shape } from './guess-dialect.js';
 

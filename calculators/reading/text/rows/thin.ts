@@ -1,4 +1,4 @@
-import type { Finding } from '../../../shared/output.js';
+import type { Finding } from '../../../../shared/output.js';
 import type { Points } from './curve.js';
 import { finding } from './findings.js';
 import type { Watch } from './scan-rows.js';

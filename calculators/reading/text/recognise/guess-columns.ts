@@ -1,4 +1,4 @@
-import type { COLUMN_KINDS, ReadingOverrides } from '../../../shared/contracts/reading.js';
+import type { COLUMN_KINDS, ReadingOverrides } from '../../../../shared/contracts/reading.js';
 import type { ColumnMeaning } from './column-names.js';
 import type { DialectGuess } from './guess-dialect.js';
 import { phaseMisfit } from './minimum-phase.js';

@@ -1,6 +1,6 @@
-import type { Reading } from '../../../shared/contracts/reading.js';
-import { InputError } from '../../../shared/errors.js';
-import type { Finding } from '../../../shared/output.js';
+import type { Reading } from '../../../../shared/contracts/reading.js';
+import { InputError } from '../../../../shared/errors.js';
+import type { Finding } from '../../../../shared/output.js';
 import { finding } from './findings.js';
 import type { Table, Watch } from './scan-rows.js';
 import { sortByFrequency } from './sort.js';

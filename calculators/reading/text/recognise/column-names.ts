@@ -1,6 +1,6 @@
-import { withoutMark } from './comments.js';
-import { type Dialect, SEPARATOR_CODE } from './dialect.js';
-import { type UnitWord, unitWord } from './units.js';
+import { withoutMark } from '../comments.js';
+import { type Dialect, SEPARATOR_CODE } from '../dialect.js';
+import { type UnitWord, unitWord } from '../units.js';
 
 export type NamedKind = 'frequency' | 'magnitude' | 'phase' | 'real' | 'imaginary' | 'other' | 'not-impedance';
 

@@ -1,7 +1,7 @@
-import type { ReadingOverrides } from '../../../shared/contracts/reading.js';
-import type { Dialect } from './dialect.js';
-import type { Characters } from './encoding.js';
-import { type Field, splitRow } from './row.js';
+import type { ReadingOverrides } from '../../../../shared/contracts/reading.js';
+import type { Dialect } from '../dialect.js';
+import type { Characters } from '../encoding.js';
+import { type Field, splitRow } from '../row.js';
 import type { Line } from './sample.js';
 
 /** What most lines look like in a dialect: how many fields, and which of them are numbers. */
