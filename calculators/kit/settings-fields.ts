@@ -8,6 +8,7 @@ interface FieldBase {
   readonly path: readonly string[]; // ['air', 'temperature']
   readonly label: string;
   readonly help: string;
+  readonly heading: string; // of the part of the form it stands in, '' for none
   readonly required: boolean;
 }
 export interface NumberSetting extends FieldBase {
@@ -58,6 +59,7 @@ interface JsonNode {
   type?: string;
   label?: string;
   help?: string;
+  group?: string;
   unit?: string;
   default?: unknown;
   enum?: readonly unknown[];
@@ -86,7 +88,13 @@ function fieldsOf(node: JsonNode, path: readonly string[]): SettingsField[] {
 }
 
 function fieldOf(node: JsonNode, path: readonly string[], required: boolean): SettingsField | null {
-  const base: FieldBase = { path, label: node.label ?? path.at(-1) ?? '', help: node.help ?? '', required };
+  const base: FieldBase = {
+    path,
+    label: node.label ?? path.at(-1) ?? '',
+    help: node.help ?? '',
+    heading: node.group ?? '',
+    required,
+  };
   if (node.enum) {
     return { ...base, kind: 'choice', options: node.enum.map(String), preset: textOrNull(node.default) };
   }

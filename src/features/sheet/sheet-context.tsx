@@ -1,0 +1,34 @@
+import { createContext, useContext } from 'react';
+import type { Result } from '../../../shared/contracts/result.js';
+import type { SweepRow } from '../../../shared/contracts/sweep.js';
+import type { Output } from '../../../shared/output.js';
+import type { Points } from '../../../shared/points.js';
+import type { SheetState } from './use-sheet-content.js';
+
+/** What the panes of one sheet share. */
+export interface SheetScene {
+  readonly sheetId: string;
+  readonly state: SheetState;
+  readonly sweeps: readonly SweepRow[];
+  readonly results: readonly Result[];
+  readonly areResultsHere: boolean; // fetched: one that is missing now is in the bin
+  /** Points of what is drawn or used by a card, by their hash, as far as they have arrived. */
+  readonly points: ReadonlyMap<string, Points>;
+  readonly activeSweepId: string | undefined;
+  setActiveSweep(sweepId: string): void;
+  /** Outputs whose curves and markers lie over the chart, by card. */
+  readonly overlays: ReadonlyMap<string, Output>;
+  setOverlay(cardId: string, output: Output | undefined): void;
+  setCursorA(hz: number): void;
+  openUnpack(files?: readonly File[]): void;
+  readonly readOnlyReason: string | undefined;
+}
+
+const SceneContext = createContext<SheetScene | undefined>(undefined);
+export const SheetSceneProvider = SceneContext.Provider;
+
+export function useSheetScene(): SheetScene {
+  const scene = useContext(SceneContext);
+  if (!scene) throw new Error('useSheetScene outside a sheet');
+  return scene;
+}
