@@ -79,6 +79,7 @@ export interface ChartInput extends ChartContent {
   readonly locale?: string | undefined;
   readonly textScale?: number; // 1.25 in the workshop
   readonly chosenCursor?: 'A' | 'B' | undefined;
+  readonly isStill?: boolean; // nobody will set a cursor: no room is kept for flags that are not there
 }
 
 /** The sweep whose values the cursors show. */

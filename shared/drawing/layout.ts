@@ -42,6 +42,7 @@ export const NEAT_GAP = 5; // px between the dark inner rule and the pale outer 
 const STRIP_GAP = 14;
 const MOST_END_LABELS = 6;
 const END_LABEL_LEAST_WIDTH = 620;
+export const END_LABEL_LEAD = 18; // px of line before a name at the right end
 
 export const drawnSweeps = (input: Pick<ChartInput, 'sweeps'>): ChartSweep[] => input.sweeps.filter((s) => !s.isDimmed);
 export const isRamp = (input: Pick<ChartInput, 'sweeps'>): boolean => drawnSweeps(input).length > 8;
@@ -114,9 +115,10 @@ export function layoutOf(input: ChartInput): ChartLayout {
   const right = widthPx - Math.round(endLabelWidth > 0 ? endLabelWidth + NEAT_GAP + 18 : NEAT_GAP + 12);
   const titleY = input.title ? Math.round(10 + sizes.title) : 0;
   const edge = isNarrow ? 12 : 16;
-  const rows = legendRows(input, sizes, edge, widthPx - edge, titleY > 0 ? titleY + 18 * textScale : 18 * textScale);
+  const rows = legendRows(input, sizes, edge, widthPx - edge, titleY);
+  const hasFlags = !input.isStill || input.state.cursorAHz !== null || input.state.cursorBHz !== null;
   const flagTop = Math.round(rows.bottom + 4);
-  const flagHeight = Math.round(sizes.tick * 2 + 16);
+  const flagHeight = hasFlags ? Math.round(sizes.tick * 2 + 16) : 6;
   const top = flagTop + flagHeight + NEAT_GAP + 3;
   const bottom = Math.round(heightPx - (NEAT_GAP + 6 + sizes.tick + 8 + sizes.note + 8));
   const frame: Rect = { x: left, y: top, width: Math.max(40, right - left), height: Math.max(60, bottom - top) };
@@ -163,32 +165,57 @@ function stripsOf(input: ChartInput, frame: Rect): Strip[] {
 function endLabelRoom(input: ChartInput, sizes: TextSizes): number {
   const drawn = drawnSweeps(input);
   if (drawn.length === 0 || drawn.length > MOST_END_LABELS || input.widthPx < END_LABEL_LEAST_WIDTH) return 0;
-  const widest = Math.max(...drawn.map((sweep) => textWidthPx(sweep.name, 'ui', sizes.note)));
-  return Math.min(widest + 4, input.widthPx * 0.16);
+  const widest = Math.max(...drawn.map((sweep) => textWidthPx(sweep.name, 'ui', sizes.note, 650)));
+  return Math.min(widest + END_LABEL_LEAD, input.widthPx * 0.18);
 }
 
-/** Names beside their line samples, in as many rows as they need and at most three. */
-function legendRows(input: ChartInput, sizes: TextSizes, left: number, right: number, firstY: number) {
-  const entries: LegendEntry[] = [];
-  const rowHeight = Math.round(sizes.note * 1.6);
-  let [x, y] = [left, firstY];
-  const add = (kind: LegendEntry['kind'], id: string, label: string, lineNumber: number) => {
-    const most = Math.min(260, right - left - 40);
-    const shown = fitText(label, most, 'ui', sizes.note);
-    const width = SAMPLE_WIDTH + 8 + textWidthPx(shown, 'ui', sizes.note) + 18;
-    if (x > left && x + width - 18 > right) [x, y] = [left, y + rowHeight];
-    if (y <= firstY + rowHeight * 2) entries.push({ kind, id, label: shown, lineNumber, x, y });
-    x += width;
-  };
+interface LegendItem {
+  readonly kind: LegendEntry['kind'];
+  readonly id: string;
+  readonly label: string;
+  readonly lineNumber: number;
+}
+function legendItems(input: ChartInput): LegendItem[] {
   const drawn = drawnSweeps(input);
+  const items: LegendItem[] = [];
   if (isRamp(input)) {
     const active = activeSweep(input);
-    add('ramp', 'ramp', `${drawn[0]?.name ?? ''} … ${drawn[drawn.length - 1]?.name ?? ''} (${drawn.length})`, 1);
-    if (active) add('sweep', active.id, active.name, active.lineNumber);
-  } else for (const sweep of drawn) add('sweep', sweep.id, legendName(sweep), sweep.lineNumber);
-  for (const model of input.models ?? []) add('model', model.id, model.label, 1);
-  for (const band of input.bands ?? []) add('band', band.label, band.label, band.lineNumber ?? 3);
-  return { entries, bottom: entries.length === 0 ? firstY - 12 : y + rowHeight / 2 };
+    const label = `${drawn[0]?.name ?? ''} … ${drawn[drawn.length - 1]?.name ?? ''} (${drawn.length})`;
+    items.push({ kind: 'ramp', id: 'ramp', label, lineNumber: 1 });
+    if (active) items.push({ kind: 'sweep', id: active.id, label: active.name, lineNumber: active.lineNumber });
+  } else {
+    for (const s of drawn) items.push({ kind: 'sweep', id: s.id, label: legendName(s), lineNumber: s.lineNumber });
+  }
+  for (const m of input.models ?? []) items.push({ kind: 'model', id: m.id, label: m.label, lineNumber: 1 });
+  for (const b of input.bands ?? []) {
+    items.push({ kind: 'band', id: b.label, label: b.label, lineNumber: b.lineNumber ?? 3 });
+  }
+  return items;
 }
+
+/** Names beside their line samples: on the title's row where they fit, else in up to three rows of their own. */
+function legendRows(input: ChartInput, sizes: TextSizes, left: number, right: number, titleY: number) {
+  const rowHeight = Math.round(sizes.note * 1.6);
+  const widths = (label: string) => SAMPLE_WIDTH + 8 + textWidthPx(label, 'ui', sizes.note, 650);
+  const items = legendItems(input).map((item) => {
+    const label = fitText(item.label, Math.min(260, right - left - 40), 'ui', sizes.note, 650);
+    return { ...item, label, width: widths(label) };
+  });
+  const total = items.reduce((sum, { width }) => sum + width + LEGEND_GAP, -LEGEND_GAP);
+  const title = titleY > 0 ? textWidthPx(`${input.title} ${input.revision ?? ''}`, 'ui', sizes.title, 650) + 48 : 0;
+  const fitsBeside = titleY > 0 && items.length > 0 && left + title + total <= right;
+  const firstY = fitsBeside ? titleY - sizes.title * 0.34 : titleY > 0 ? titleY + rowHeight : rowHeight;
+  let [x, y] = [fitsBeside ? right - total : left, firstY];
+  const entries: LegendEntry[] = [];
+  for (const { width, ...item } of items) {
+    if (!fitsBeside && x > left && x + width > right) [x, y] = [left, y + rowHeight];
+    if (y <= firstY + rowHeight * 2) entries.push({ ...item, x, y });
+    x += width + LEGEND_GAP;
+  }
+  const lastY = entries[entries.length - 1]?.y;
+  const bottom = fitsBeside ? titleY + 4 : lastY === undefined ? titleY + 4 : lastY + rowHeight / 2;
+  return { entries, bottom };
+}
+const LEGEND_GAP = 18;
 export const SAMPLE_WIDTH = 28;
 const legendName = (sweep: ChartSweep): string => (sweep.isReference ? `★ ${sweep.name}` : sweep.name);

@@ -118,9 +118,12 @@ export const chart = {
     more: (count: number) => `${count} more sweeps are drawn.`,
   },
   misfit: {
-    name: (label: string) => `Misfit over frequency: ${label}`,
-    band: (percent: string) => `±${percent} %, the size of the noise`,
-    sentence: (rms: string, worst: string, hz: string) => `Misfit ${rms} % on average, at most ${worst} % at ${hz}.`,
+    name: 'Misfit over frequency',
+    real: 'real part',
+    imaginary: 'imaginary part',
+    none: 'There is no misfit to draw.',
+    sentence: (rms: string, worst: string, hz: string) =>
+      `Misfit ${rms}\u00A0% on average, at most ${worst}\u00A0% at ${hz}.`,
   },
   locusName: 'Locus',
 } as const;

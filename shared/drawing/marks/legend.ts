@@ -107,7 +107,7 @@ export function drawEndLabels(input: ChartInput, layout: ChartLayout): Primitive
     .map((place) => ({ sweep: place.sweep, from: place.y ?? 0, y: place.y ?? 0 }))
     .sort((a, b) => a.y - b.y);
   spread(places, size * 1.3, strip.rect.y + size * 0.4, strip.rect.y + strip.rect.height - size * 0.2);
-  const room = layout.widthPx - layout.endLabelsX - 10;
+  const room = layout.widthPx - layout.endLabelsX - 6;
   const active = activeSweep(input);
   return places.flatMap(({ sweep, from, y }): Primitive[] => {
     const weight = sweep === active && places.length > 1 ? 650 : 400;

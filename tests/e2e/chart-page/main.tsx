@@ -1,5 +1,6 @@
 import '../../../src/styles.css';
-import { StrictMode, useMemo, useState } from 'react';
+import './page.css';
+import { type CSSProperties, StrictMode, useMemo, useState } from 'react';
 import { createRoot } from 'react-dom/client';
 import { type ChartContent, type ChartState, FITTED_CHART } from '../../../shared/drawing/chart-input.js';
 import { SweepChart } from '../../../src/components/chart/sweep-chart.js';
@@ -17,7 +18,9 @@ function contentAsked(): ChartContent {
   const model = driverPoints({ fsHz: 31.9, reOhm: 5.9, resOhm: 39, qms: 5, leHenry: 2.1e-4, points: 300 });
   const isFull = asked.has('full');
   return {
-    sweeps: isFull ? sweeps.map((s, k) => (k === 0 ? { ...s, isReference: true, masked: maskAround(s.points.frequencyHz) } : s)) : sweeps,
+    sweeps: isFull
+      ? sweeps.map((s, k) => (k === 0 ? { ...s, isReference: true, masked: maskAround(s.points.frequencyHz) } : s))
+      : sweeps,
     title: asked.get('title') ?? 'Rehearsal room 2, mid-woofers',
     revision: 'Revision 3',
     ...(isFull
@@ -48,9 +51,9 @@ function Page() {
   const content = useMemo(() => ({ ...base, activeSweepId }), [base, activeSweepId]);
   const say = (words: string) => setLog((old) => [...old, words]);
   return (
-    <main className="p-4">
+    <main style={{ '--chart-height': `${asked.get('height') ?? 620}px` } as CSSProperties}>
       <SweepChart
-        className="h-[620px] max-h-[92vh]"
+        className="chart-under-test"
         content={content}
         state={state}
         onStateChange={(next, change) => {
