@@ -36,6 +36,8 @@ export interface JointDriverProblem extends LeastSquaresProblem {
   /** Local parameters of one sweep (order of `driverParameters`) from the joint values: for curves and misfit. */
   localValues(sweep: number, values: ArrayLike<number>): Float64Array;
   readonly terms: readonly SweepTerm[];
+  /** Everything known beforehand, uncertain masses included: the last rows of the residual, in this order. */
+  readonly priors: readonly PriorKnowledge[];
 }
 
 /** One entry of ∂(scaled local)/∂(scaled joint). `massRatio`: the entry is ± mu, since mu = m/Mms is not logarithmic. */
@@ -85,6 +87,7 @@ export function jointDriverProblem(
     indexOf: (id) => assembly.indexOf(id),
     localValues: (sweep, values) => assembly.localValues(sweep, values).slice(),
     terms,
+    priors: assembly.priors,
   };
 }
 

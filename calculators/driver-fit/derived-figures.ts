@@ -15,7 +15,7 @@ export interface DriverNumbers {
   readonly speedOfSoundMPerS: number;
   readonly coilOhm: (frequencyHz: number) => { readonly re: number; readonly im: number };
   readonly squaredOhm: (lnF: number) => number; // |Z|² of the fitted curve
-  readonly parameters: Readonly<Record<string, number>>; // of coil and suspension, by the id of their figure
+  readonly parameters: Readonly<Record<string, number | null>>; // of coil and suspension, by the id of their figure
 }
 export interface FigureContext {
   readonly airLoadDiscs: 1 | 2; // (8/3)ρa³ times this is the air load of the mounting

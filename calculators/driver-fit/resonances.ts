@@ -1,3 +1,6 @@
+import { peaksOf } from '../numerics/peaks.js';
+import { median, runningMedian } from '../numerics/statistics.js';
+
 /** A hump of |Z| inside the sweep. */
 export interface Resonance {
   readonly index: number; // row of the largest |Z| near the top
@@ -56,40 +59,18 @@ function medianBins(frequencyHz: Float64Array, magnitudeOhm: Float64Array): Binn
     }
     const middle = (row + end) >> 1;
     binned.lnF.push(Math.log(frequencyHz[middle] ?? 1));
-    binned.lnZ.push(Math.log(median(Array.from(magnitudeOhm.subarray(row, end + 1)))));
+    binned.lnZ.push(Math.log(median(magnitudeOhm.subarray(row, end + 1))));
     binned.firstRow.push(row);
     binned.lastRow.push(end);
     row = end + 1;
   }
-  const { lnZ } = binned;
-  const smooth = lnZ.map((_, i) => (i === 0 || i === lnZ.length - 1 ? (lnZ[i] ?? 0) : median(lnZ.slice(i - 1, i + 2))));
-  return { ...binned, lnZ: smooth };
+  return { ...binned, lnZ: Array.from(runningMedian(binned.lnZ, 1)) };
 }
 
 function prominentMaxima({ lnZ }: Binned): { bin: number; prominence: number }[] {
-  const maxima: { bin: number; prominence: number }[] = [];
-  for (let i = 1; i < lnZ.length - 1; i += 1) {
-    const height = lnZ[i] ?? 0;
-    if (height <= (lnZ[i - 1] ?? 0)) continue;
-    let right = i;
-    while (right + 1 < lnZ.length && lnZ[right + 1] === height) right += 1;
-    if (right === lnZ.length - 1 || (lnZ[right + 1] ?? 0) > height) continue;
-    const prominence = height - Math.max(footOf(lnZ, i, -1), footOf(lnZ, right, 1));
-    if (prominence > LEAST_PROMINENCE) maxima.push({ bin: (i + right) >> 1, prominence });
-  }
-  return maxima;
-}
-
-/** Lowest ln|Z| on the way from a maximum to the next higher point, or to the end of the sweep. */
-function footOf(lnZ: readonly number[], from: number, step: 1 | -1): number {
-  const height = lnZ[from] ?? 0;
-  let lowest = height;
-  for (let i = from + step; i >= 0 && i < lnZ.length; i += step) {
-    const value = lnZ[i] ?? 0;
-    if (value > height) break;
-    lowest = Math.min(lowest, value);
-  }
-  return lowest;
+  return peaksOf(lnZ)
+    .filter(({ prominence }) => prominence > LEAST_PROMINENCE)
+    .map(({ index, prominence }) => ({ bin: index, prominence }));
 }
 
 function atHighestRow(
@@ -135,11 +116,4 @@ function flankKind(lnZ: readonly number[], imaginaryOhm: Float64Array | undefine
   const slopeOfInductor = Math.LN2 / BINS_PER_OCTAVE; // ln|Z| per bin, |Z| ∝ f
   if (rise > Math.log(1.5) && endSlope > 1.3 * slopeOfInductor) return { kind: 'peak-outside-sweep', side: 'above' };
   return { kind: 'not-a-driver' };
-}
-
-function median(values: number[]): number {
-  const sorted = values.sort((a, b) => a - b);
-  const middle = sorted.length >> 1;
-  const upper = sorted[middle] ?? 0;
-  return sorted.length % 2 ? upper : (upper + (sorted[middle - 1] ?? upper)) / 2;
 }

@@ -1,0 +1,91 @@
+import { FREE_AIR } from '../acoustics/driver-impedance.js';
+import { driverSweepProblem } from '../acoustics/driver-sweep-problem.js';
+import type { SuspensionModel } from '../acoustics/suspension.js';
+import type { CoilModel } from '../acoustics/voice-coil.js';
+import type { RunContext } from '../kit/calculator.js';
+import { type Candidate, fitCandidate, type ModelChoice, modelName, ranked, withinReach } from './candidates.js';
+import { type FittedCurve, fitRows } from './fit-rows.js';
+import type { Measured } from './measured.js';
+import { type RoughFit, roughFit } from './rough-fit.js';
+import { type SingleFit, singleFit } from './single-fit.js';
+
+/** The free-air sweep under every model that the settings leave open. */
+export interface FreeAirModels {
+  readonly best: SingleFit;
+  readonly values: ReadonlyMap<string, Readonly<Record<string, number>>>; // by model name, then parameter id
+}
+export interface FitOptions {
+  readonly choices: readonly ModelChoice[];
+  readonly robust: boolean;
+  readonly context: RunContext;
+}
+
+const STARTS: Readonly<Record<SuspensionModel, (fsHz: number) => number[]>> = {
+  constant: () => [],
+  creep: () => [0.05],
+  relaxing: (fsHz) => [0.2, 1 / (2 * Math.PI * 0.4 * fsHz)], // in the middle of what rubber and foam do (from trials)
+};
+
+/**
+ * Every creep law is tried with every coil: without creep in the model the wrong coil can win. All are fitted to the same
+ * rows; when the best shows other wild points than the rough curve did, once more to the rows it leaves.
+ */
+export function freeAirModels(measured: Measured, { choices, robust, context }: FitOptions): FreeAirModels {
+  const checkpoint = (): void => context.checkpoint();
+  const coils = [...new Set(choices.map(({ coil }) => coil))];
+  let rough = roughFit(measured, coils, robust, checkpoint);
+  let near: FittedCurve = rough.nearest;
+  let known: ReadonlyMap<string, Float64Array> = new Map();
+  for (let round = 0; ; round += 1) {
+    const candidates = fitAll(measured, rough, near, known, { choices, robust, context });
+    known = new Map(candidates.map((candidate) => [modelName(candidate), candidate.fit.values]));
+    const leader = ranked(candidates, candidates[0]?.problem.activeCount ?? 1)[0]?.candidate;
+    if (!leader) throw new Error('driver-fit has no model to try');
+    const best = singleFit(measured, leader, rough, leader.fit.values, { robust, checkpoint });
+    const isSettled = round === 1 || best.keep.every((flag, i) => flag === rough.keep[i]);
+    if (isSettled) return { best, values: byId(candidates) };
+    rough = { ...rough, keep: best.keep, wild: best.wild };
+    near = { model: { ...leader, load: FREE_AIR }, values: best.fit.values };
+  }
+}
+
+function fitAll(
+  measured: Measured,
+  rough: RoughFit,
+  near: FittedCurve,
+  known: ReadonlyMap<string, Float64Array>,
+  { choices, context }: FitOptions,
+): Candidate[] {
+  const rows = fitRows(measured.data, rough.keep, near);
+  const weights = rows.counts.map(Math.sqrt);
+  return choices.map((choice, i) => {
+    context.progress(i, choices.length, modelName(choice));
+    context.checkpoint();
+    const model = { ...choice, load: FREE_AIR };
+    const problem = withinReach(driverSweepProblem(model, rows.data, weights), rough.motional.fsHz);
+    const start = known.get(modelName(choice)) ?? firstStart(rough, choice.coil, choice.suspension);
+    return fitCandidate(choice, problem, start, () => context.checkpoint());
+  });
+}
+
+function firstStart({ coils, motional }: RoughFit, coil: CoilModel, suspension: SuspensionModel): number[] {
+  return [...(coils.get(coil) ?? []), ...STARTS[suspension](motional.fsHz)];
+}
+
+function byId(candidates: readonly Candidate[]): Map<string, Record<string, number>> {
+  return new Map(
+    candidates.map((candidate) => [
+      modelName(candidate),
+      Object.fromEntries(candidate.problem.parameters.map(({ id }, k) => [id, candidate.fit.values[k] ?? 0])),
+    ]),
+  );
+}
+
+/** A sweep of the same driver under a load, by itself: the driver's own numbers from its curve, the rest from free air. */
+export function loadedFit(measured: Measured, free: SingleFit, { robust, context }: FitOptions): SingleFit {
+  const checkpoint = (): void => context.checkpoint();
+  const rough = roughFit(measured, [free.choice.coil], robust, checkpoint);
+  const own = rough.coils.get(free.choice.coil) ?? free.fit.values;
+  const start = Float64Array.from(free.fit.values, (value, k) => (k < 4 ? (own[k] ?? value) : value));
+  return singleFit(measured, free.choice, rough, start, { robust, checkpoint });
+}

@@ -1,0 +1,65 @@
+import { type SweepData, sweepData } from '../acoustics/sweep-term.js';
+import type { RoleInput, RoleInputs } from '../kit/calculator.js';
+import { hasPhase, magnitudeOf, type Sweep } from '../kit/sweep.js';
+import { type CurveKind, curveKind } from './resonances.js';
+import { roles } from './roles.js';
+import type { DriverFitSettings } from './settings.js';
+
+export type Role = keyof typeof roles;
+
+/** One sweep as the fit sees it. Shapes (n): every curve of `data`, magnitudeOhm and keep. */
+export interface Measured {
+  readonly role: Role;
+  readonly name: string;
+  readonly sweep: Sweep; // inside the band
+  readonly data: SweepData;
+  readonly magnitudeOhm: Float64Array;
+  readonly kind: CurveKind;
+  readonly keep: Uint8Array; // 0: a wild point or hum, left out of the fit
+  readonly massKg: number; // added mass; 0 in free air
+  readonly massUncertaintyKg: number;
+  readonly volumeM3: number | null;
+  readonly volumeUncertaintyM3: number;
+}
+
+export const LEAST_POINTS_TO_FIT = 16; // fewer cannot settle the seven and more parameters of a driver
+
+/** Every sweep given, free air first, cut to the band of the settings. */
+export function measuredSweeps(inputs: RoleInputs, settings: DriverFitSettings): Measured[] {
+  const order = Object.keys(roles) as Role[];
+  return order.flatMap((role) => (inputs[role] ?? []).flatMap((input) => measuredSweep(role, input, settings)));
+}
+
+function measuredSweep(role: Role, { sweep: whole, keys }: RoleInput, settings: DriverFitSettings): Measured[] {
+  if (!whole) return [];
+  const sweep = settings.band ? insideBand(whole, settings.band) : whole;
+  const magnitudeOhm = magnitudeOf(sweep);
+  return [
+    {
+      role,
+      name: sweep.name,
+      sweep,
+      data: sweepData(sweep),
+      magnitudeOhm,
+      kind: curveKind(sweep.frequencyHz, magnitudeOhm, sweep.imaginaryOhm),
+      keep: new Uint8Array(magnitudeOhm.length).fill(1),
+      massKg: numberOf(keys.mass) ?? 0,
+      massUncertaintyKg: numberOf(keys.massUncertainty) ?? settings.massUncertainty ?? 0,
+      volumeM3: numberOf(keys.volume),
+      volumeUncertaintyM3: numberOf(keys.volumeUncertainty) ?? settings.volumeUncertainty ?? 0,
+    },
+  ];
+}
+
+const numberOf = (value: number | string | undefined): number | null => (typeof value === 'number' ? value : null);
+
+function insideBand(sweep: Sweep, [lowHz, highHz]: readonly [number, number]): Sweep {
+  const rows = Array.from(sweep.frequencyHz.keys()).filter((row) => {
+    const f = sweep.frequencyHz[row] ?? 0;
+    return f >= lowHz && f <= highHz;
+  });
+  const cut = (values: Float64Array): Float64Array => Float64Array.from(rows, (row) => values[row] ?? 0);
+  const common = { name: sweep.name, conditions: sweep.conditions, frequencyHz: cut(sweep.frequencyHz) };
+  if (hasPhase(sweep)) return { ...common, realOhm: cut(sweep.realOhm), imaginaryOhm: cut(sweep.imaginaryOhm) };
+  return { ...common, magnitudeOhm: cut(magnitudeOf(sweep)) };
+}

@@ -1,0 +1,86 @@
+import type { ComplexArray } from '../numerics/complex-array.js';
+import { COMPLEX_MEDIAN_TO_SIGMA, MAD_TO_SIGMA, median, medianInPlace } from '../numerics/statistics.js';
+
+/** Which points do not belong to the curve, and why. Shapes: rows are indices into the sweep. */
+export interface WildPoints {
+  readonly humRows: readonly number[];
+  readonly humHz: readonly number[]; // harmonics hit, rising
+  readonly mainsHz: 50 | 60 | null;
+  readonly wildRows: readonly number[];
+}
+export const NO_WILD_POINTS: WildPoints = { humRows: [], humHz: [], mainsHz: null, wildRows: [] };
+
+const NEIGHBOURS = 5; // on each side
+const SPREAD_ROWS = 30; // on each side, for the local noise
+const LIMIT = 6; // times the local noise per component: by chance once in 7e7 points
+const FLOOR = 2e-7; // relative: eight written digits
+const HARMONICS = 8;
+const HUM_WIDTH = 0.03; // relative distance from a harmonic
+
+/**
+ * Points that lie off the median of their neighbours in ρ = ln(Z/model) by more than six times the local noise: narrow
+ * enough to be no feature of a driver. Those at harmonics of 50 or 60 Hz are hum, the rest wild. Common practice, no published source.
+ * Shapes: frequencyHz (n), misfit (n).
+ */
+export function wildPoints(frequencyHz: Float64Array, misfit: ComplexArray, hasPhase: boolean): WildPoints {
+  const n = frequencyHz.length;
+  const distance = distanceFromNeighbours(misfit);
+  const perMedian = hasPhase ? 1 / COMPLEX_MEDIAN_TO_SIGMA : MAD_TO_SIGMA;
+  const overall = median(distance) * perMedian;
+  const rows: number[] = [];
+  for (let i = 0; i < n; i += 1) {
+    if ((distance[i] ?? 0) <= LIMIT * Math.max(0.5 * overall, FLOOR)) continue;
+    const around = distance.subarray(Math.max(0, i - SPREAD_ROWS), Math.min(n, i + SPREAD_ROWS + 1));
+    const local = median(around) * perMedian;
+    if ((distance[i] ?? 0) > LIMIT * Math.max(local, 0.5 * overall, FLOOR)) rows.push(i);
+  }
+  return sorted(rows, frequencyHz);
+}
+
+/** |ρ − median of the neighbours|, component by component, the point itself left out. */
+function distanceFromNeighbours({ re, im }: ComplexArray): Float64Array {
+  const n = re.length;
+  const out = new Float64Array(n);
+  const reals = new Float64Array(2 * NEIGHBOURS);
+  const imaginaries = new Float64Array(2 * NEIGHBOURS);
+  for (let i = 0; i < n; i += 1) {
+    let count = 0;
+    const from = Math.max(0, Math.min(i - NEIGHBOURS, n - 1 - 2 * NEIGHBOURS));
+    for (let j = from; j <= Math.min(n - 1, from + 2 * NEIGHBOURS); j += 1) {
+      if (j === i) continue;
+      reals[count] = re[j] ?? 0;
+      imaginaries[count] = im[j] ?? 0;
+      count += 1;
+    }
+    out[i] = Math.hypot(
+      (re[i] ?? 0) - medianInPlace(reals.subarray(0, count)),
+      (im[i] ?? 0) - medianInPlace(imaginaries.subarray(0, count)),
+    );
+  }
+  return out;
+}
+
+function sorted(rows: readonly number[], frequencyHz: Float64Array): WildPoints {
+  const families = ([50, 60] as const).map((mainsHz) => {
+    const hits = rows.filter((row) => harmonicOf(frequencyHz[row] ?? 0, mainsHz) > 0);
+    const harmonics = [...new Set(hits.map((row) => harmonicOf(frequencyHz[row] ?? 0, mainsHz)))].sort((a, b) => a - b);
+    const isRun = hits.some((row) => hits.includes(row + 1));
+    const isHum = harmonics.length >= 2 || (harmonics.length === 1 && isRun && (harmonics[0] ?? 9) <= 3);
+    return { mainsHz, hits: isHum ? hits : [], harmonics };
+  });
+  const best = families.reduce((a, b) => (b.hits.length > a.hits.length ? b : a));
+  if (best.hits.length === 0) return { ...NO_WILD_POINTS, wildRows: rows };
+  return {
+    humRows: best.hits,
+    humHz: best.harmonics.map((k) => k * best.mainsHz),
+    mainsHz: best.mainsHz,
+    wildRows: rows.filter((row) => !best.hits.includes(row)),
+  };
+}
+
+/** Number of the harmonic a frequency lies on, 0 if on none. */
+function harmonicOf(frequencyHz: number, mainsHz: number): number {
+  const k = Math.round(frequencyHz / mainsHz);
+  const isOn = k >= 1 && k <= HARMONICS && Math.abs(frequencyHz / (k * mainsHz) - 1) < HUM_WIDTH;
+  return isOn ? k : 0;
+}
