@@ -22,7 +22,11 @@ const UNREADABLE = new Set([
 const UNSTORABLE = new Set(['22021', '22P05', '22P02']);
 
 function refusalOf(error: unknown): Refusal {
-  if (error instanceof AppError) return { error };
+  if (error instanceof AppError) {
+    const { issues, ...detail } = error.detail; // a service that knows the field says so
+    if (!Array.isArray(issues)) return { error };
+    return { error: new AppError(error.code, error.message, detail, error.cause), issues };
+  }
   if (error instanceof InputError)
     return { error: new AppError('file-refused', error.message, { ...error.toJSON() }, error) };
   if (error instanceof ZodError) {
