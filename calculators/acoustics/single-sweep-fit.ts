@@ -36,6 +36,7 @@ const LEAST_SCALE = 1e-9; // noise-free curves: rounding of the arithmetic
 const RESCALINGS = 3;
 const OUTLIER_SCALES = 5;
 const CAUCHY_SCALES = 2;
+const CLEARLY_THERE = 3.29; // standard errors
 const EARLY: Partial<LeastSquaresOptions> = { covariance: false, relativeOffset: 0.03 };
 
 /**
@@ -84,8 +85,8 @@ export function fitDriverSweep(sweep: Sweep | SweepData, options: SweepFitOption
 }
 
 /**
- * Rss is optional in the semi-inductance model: it stays only where the Bayesian criterion would keep it,
- * (Gss/u(Gss))² > ln N. Left in without need it drags Leb, Le and K along.
+ * Rss is optional in the semi-inductance model: it stays only where the curve clearly asks for it, Gss/u(Gss) above both
+ * √ln N (the Bayesian criterion) and 3.29 (one in a thousand by chance). Left in without need it drags Leb, Le and K along.
  */
 function withoutIdleRss(
   model: DriverModel,
@@ -97,11 +98,12 @@ function withoutIdleRss(
   const problem = driverSweepProblem(model, data, weights, ['Gss']);
   const at = problem.parameters.findIndex(({ id }) => id === 'Gss');
   const rows = problem.activeCount ?? problem.residualCount;
-  if (fit.values[at]! ** 2 > Math.log(rows) * fit.standardErrors[at]! ** 2 && fit.status === 'converged') return fit;
+  const limit = Math.max(Math.log(rows), CLEARLY_THERE * CLEARLY_THERE);
+  if (fit.values[at]! ** 2 > limit * fit.standardErrors[at]! ** 2 && fit.status === 'converged') return fit;
   const start = fit.values.slice();
   start[at] = 0;
   const simpler = leastSquares(problem, start);
-  if (simpler.status === 'stalled' || rows * Math.log(simpler.cost / fit.cost) > Math.log(rows)) return fit;
+  if (simpler.status === 'stalled' || rows * Math.log(simpler.cost / fit.cost) > limit) return fit;
   return {
     ...simpler,
     status: simpler.status === 'converged' ? 'at-bound' : simpler.status,

@@ -42,7 +42,7 @@ const PARAMETERS: Readonly<Record<CoilModel, readonly FitParameter[]>> = {
     logged('Leb', 1e-9, 0.1),
     logged('Le', 1e-7, 10),
     logged('K', 1e-6, 100),
-    { id: 'Gss', lower: 0, upper: 1e3, typical: 1e-2 },
+    { id: 'Gss', lower: 0, upper: 1e3, typical: 1e-2, maxStep: 0.1 },
   ],
 };
 

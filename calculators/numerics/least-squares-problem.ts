@@ -11,8 +11,8 @@ export interface FitParameter {
   readonly lower?: number;
   readonly upper?: number;
   readonly held?: boolean; // stays at its starting value and is not counted
-  readonly maxStep?: number; // largest change of the scaled parameter in one iteration; 1.5 where logScaled, else none
-  readonly typical?: number; // size used for difference steps when the value is 0
+  readonly maxStep?: number; // largest change of the scaled parameter in one iteration; 1.5 where logScaled, else a quarter of its size
+  readonly typical?: number; // its usual size: for difference steps at 0, and for the largest step
 }
 
 /** Consecutive rows of the residual vector. A group (2 rows for a complex residual) shares one robust weight. */
@@ -53,7 +53,7 @@ export interface LeastSquaresOptions {
   readonly loss?: LossKind; // linear
   readonly lossScale?: number; // in units of the weighted residual; 1
   readonly relativeOffset?: number; // stop when the relative offset falls below this; 1e-6
-  readonly maxIterations?: number; // 100
+  readonly maxIterations?: number; // 200
   readonly absoluteSigma?: boolean; // residuals are in units of their own sigma: no scaling of the covariance
   readonly covariance?: boolean; // false skips it, for the early stages of a fit
   readonly checkpoint?: () => void; // called between iterations; may throw to stop

@@ -13,9 +13,10 @@ import { type Evaluation, FusedEvaluation, ResidualEvaluation } from './problem-
 
 const MOST_REFUSALS = 40; // in one iteration
 const LOOSE_OFFSET = 1e-3; // Bates and Watts' own limit: the confidence region is known to 0.1 % of its size
-const MOST_POLISHING = 12;
+const MOST_POLISHING = 60;
 const COST_ROUNDING = 1e-8; // relative; far above the rounding of any sum of squares met in practice
 const LOG_STEP = 1.5; // largest change of a logarithm in one iteration: a factor of 4.5
+const LINEAR_STEP = 0.25; // and of a plain value, relative to its size or a tenth of its start's
 
 /**
  * Minimises ½Σρ(r²) over the parameters, from `start` (natural values), by Levenberg–Marquardt with diagonal scaling
@@ -53,6 +54,7 @@ class Iteration {
   offset = Number.POSITIVE_INFINITY;
   private readonly p: number;
   private readonly parameters: readonly FitParameter[];
+  private readonly startSize: Float64Array;
   private readonly trial: Float64Array;
   private readonly step: Float64Array;
   private readonly low: Float64Array;
@@ -78,6 +80,7 @@ class Iteration {
     this.parameters = problem.parameters;
     this.p = this.parameters.length;
     this.values = Float64Array.from(start, (value, k) => clampTo(this.parameters[k]!, value));
+    this.startSize = this.values.map((value, k) => Math.max(Math.abs(value), 10 * (this.parameters[k]!.typical ?? 0)));
     this.trial = new Float64Array(this.p);
     this.step = new Float64Array(this.p);
     this.low = new Float64Array(this.p);
@@ -97,7 +100,7 @@ class Iteration {
     const cost = this.evaluation.tryAt(this.values);
     if (!Number.isFinite(cost)) return 'stalled';
     this.evaluation.adopt(this.values);
-    const most = this.options.maxIterations ?? 100;
+    const most = this.options.maxIterations ?? 200;
     for (; ; this.iterations++) {
       this.options.checkpoint?.();
       const arrived = this.hasArrived();
@@ -125,8 +128,7 @@ class Iteration {
       const pressesHigh = parameter.upper !== undefined && value >= parameter.upper && slope < 0;
       const curvature = hessian[k * this.p + k]!;
       this.active[k] = parameter.held || pressesLow || pressesHigh || !(curvature > 0) ? 0 : 1;
-      const floor = parameter.logScaled ? 0 : 0.1 * this.damping[k]!; // after Moré: forget slowly how steep it was
-      this.damping[k] = Math.max(curvature, floor) || 1;
+      this.damping[k] = curvature > 0 ? curvature : 1;
     }
   }
 
@@ -211,7 +213,7 @@ class Iteration {
       evaluation.adopt(this.values);
       this.iterations++;
       if (this.hasArrived()) return;
-      if (this.offset < 0.5 * previous.offset) continue;
+      if (this.offset < 0.95 * previous.offset) continue;
       if (this.offset > previous.offset) this.returnTo(previous.values);
       return;
     }
@@ -238,12 +240,18 @@ class Iteration {
     for (let k = 0; k < this.p; k++) {
       const { lower, upper, logScaled, maxStep } = this.parameters[k]!;
       const value = this.values[k]!;
-      const most = maxStep ?? (logScaled ? LOG_STEP : Number.POSITIVE_INFINITY);
+      const most = maxStep ?? (logScaled ? LOG_STEP : this.linearStep(k));
       if (lower !== undefined) this.toLower[k] = logScaled ? Math.log(lower / value) : lower - value;
       if (upper !== undefined) this.toUpper[k] = logScaled ? Math.log(upper / value) : upper - value;
       this.low[k] = Math.max(-most, this.toLower[k]!);
       this.high[k] = Math.min(most, this.toUpper[k]!);
     }
+  }
+
+  /** Unbounded for a parameter that starts at 0 and does not say how large it typically is. */
+  private linearStep(k: number): number {
+    const size = Math.max(Math.abs(this.values[k]!), 0.1 * this.startSize[k]!);
+    return this.startSize[k]! > 0 ? LINEAR_STEP * size : Number.POSITIVE_INFINITY;
   }
 
   /** Values after the step, exactly on a bound that it reaches; false when nothing moved. */

@@ -1,5 +1,5 @@
 import type { TriangularFactor } from './damped-step.js';
-import { differenceJacobian } from './differences.js';
+import { type DifferenceOrder, differenceJacobian } from './differences.js';
 import { factorise } from './householder.js';
 import type { LeastSquaresProblem, NormalSums, ResidualBlock } from './least-squares-problem.js';
 import { type Loss, lossValue, lossWeight } from './losses.js';
@@ -66,7 +66,7 @@ export class ResidualEvaluation implements Evaluation {
   private readonly work: Float64Array;
   private readonly rotated: Float64Array;
   private readonly rootWeights: Float64Array;
-  private central = false;
+  private order: DifferenceOrder = 1;
 
   constructor(
     private readonly problem: LeastSquaresProblem,
@@ -97,8 +97,8 @@ export class ResidualEvaluation implements Evaluation {
   }
 
   sharpen(values: Float64Array): boolean {
-    if (this.problem.jacobian || this.central) return false;
-    this.central = true;
+    if (this.problem.jacobian || this.order === 4) return false;
+    this.order = this.order === 1 ? 2 : 4;
     this.differentiate(values);
     this.accumulate();
     return true;
@@ -110,7 +110,7 @@ export class ResidualEvaluation implements Evaluation {
 
   private differentiate(values: Float64Array): void {
     if (this.problem.jacobian) this.problem.jacobian(values, this.jacobian);
-    else this.evaluations += differenceJacobian(this.problem, values, this.residual, this.central, this.jacobian);
+    else this.evaluations += differenceJacobian(this.problem, values, this.residual, this.order, this.jacobian);
     const n = this.residual.length;
     if (this.loss.kind === 'linear') return;
     for (let i = 0; i < this.jacobian.length; i++) this.jacobian[i]! *= this.rootWeights[i % n]!;
