@@ -1,6 +1,14 @@
 /** Words used on every screen. */
 export const common = {
   product: 'Hummock',
+  startSentence: 'Impedance sweeps in, loudspeaker decisions out.',
+  startMore:
+    'Drop the files you measured. Curves and Thiele/Small parameters, each with its ±, stand on the sheet at once. They stay in this browser until you keep them.',
+  sampleName: 'Sample: a mid-woofer in free air',
+  sampleCaption: 'A sample, drawn from a model and invented. Click the curve or press A to read it.',
+  sampleFiles: { freeAir: 'Sample free air.csv', addedMass: 'Sample with 12 g added.csv' },
+  openSample: 'Open the sample on a sheet',
+  openTry: 'Go on with what you tried',
   stop: 'Stop',
   undo: 'Undo',
   redo: 'Redo',
@@ -17,6 +25,7 @@ export const common = {
   save: 'Save',
   saving: 'Saving',
   saved: 'Saved',
+  nothingChanged: 'Nothing has changed yet.',
   notSaved: 'Not saved: no connection, trying again',
   remove: 'Remove',
   delete: 'Delete',

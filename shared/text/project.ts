@@ -132,6 +132,7 @@ export const project = {
   readAgain: 'Read again',
   readAgainHint: 'Makes a new revision; the older ones stay, and results made from them say that they are out of date.',
   readAgainDone: (number: number) => `Read again: revision ${number}.`,
+  sameRule: 'Nothing in the rule has changed.',
   sameReading: 'The points are the same as before.',
   revisions: 'Revisions',
   revision: (number: number) => `Revision ${number}`,

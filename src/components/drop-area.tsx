@@ -35,8 +35,14 @@ export function DropArea({ onFiles, label, children, className }: DropAreaProps)
   );
 }
 
-/** The button and the file field behind it. The field itself stays reachable by its label, for keys and for tests. */
-export function ChooseFiles({ label, onFiles }: { label: string; onFiles: (files: File[]) => void }) {
+/** The button and the file field behind it; the field itself stays reachable by its label. */
+interface ChooseFilesProps {
+  label: string;
+  onFiles: (files: File[]) => void;
+  /** Beside other things, not the page's main action. */
+  isQuiet?: boolean;
+}
+export function ChooseFiles({ label, onFiles, isQuiet }: ChooseFilesProps) {
   const id = useId();
   const input = useRef<HTMLInputElement>(null);
   return (
@@ -54,7 +60,11 @@ export function ChooseFiles({ label, onFiles }: { label: string; onFiles: (files
           event.target.value = ''; // the same file can be chosen again
         }}
       />
-      <Button look="primary" icon={<FolderOpen size={18} aria-hidden />} onClick={() => input.current?.click()}>
+      <Button
+        look={isQuiet ? 'plain' : 'primary'}
+        icon={<FolderOpen size={18} aria-hidden />}
+        onClick={() => input.current?.click()}
+      >
         {text.common.chooseFiles}
       </Button>
     </>

@@ -1,4 +1,4 @@
-import { type Problem, ProblemSchema } from '../../shared/contracts/problem.js';
+import type { Problem } from '../../shared/contracts/problem.js';
 import { INPUT_ERROR_CODES, InputError, type InputErrorCode } from '../../shared/errors.js';
 import { text } from '../../shared/text.js';
 
@@ -44,12 +44,4 @@ const OWN_DETAIL: Record<OwnCode, string> = {
 };
 export function ownError(code: OwnCode, cause?: unknown): ApiError {
   return new ApiError(code, OWN_DETAIL[code], 0, '', [], {}, cause);
-}
-
-/** The error that an answer other than 2xx stands for. `body` is the parsed JSON, whatever it is. */
-export function problemToError(status: number, body: unknown): ApiError {
-  const parsed = ProblemSchema.safeParse(body);
-  if (!parsed.success) return new ApiError('odd-answer', text.errors.oddAnswerDetail, status);
-  const { code, detail, requestId, issues, extra } = parsed.data;
-  return new ApiError(code, detail, status, requestId, issues, extra);
 }

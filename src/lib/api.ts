@@ -1,5 +1,6 @@
 import type { z } from 'zod';
-import { type ApiError, ownError, problemToError } from './api-error.js';
+import { type ApiError, ownError } from './api-error.js';
+import { problemToError } from './problem-to-error.js';
 import { session } from './session.js';
 import { sendForm, type UploadOptions } from './upload.js';
 

@@ -1,4 +1,5 @@
-import { ownError, problemToError } from './api-error.js';
+import { ownError } from './api-error.js';
+import { problemToError } from './problem-to-error.js';
 
 export interface UploadOptions {
   signal?: AbortSignal;
@@ -14,7 +15,10 @@ function jsonOrUndefined(body: string): unknown {
   }
 }
 
-/** Posts a form with progress, which fetch cannot tell; resolves with the parsed JSON of a 2xx answer. */
+/**
+ * Posts a form with progress, which fetch cannot tell; resolves with the parsed JSON of a 2xx answer. An abort counts
+ * while bytes are still leaving; after that the outcome is the server's, and comes as its answer.
+ */
 export function sendForm(url: string, form: FormData, { signal, onProgress }: UploadOptions): Promise<unknown> {
   return new Promise((resolve, reject) => {
     if (signal?.aborted) {
@@ -22,10 +26,16 @@ export function sendForm(url: string, form: FormData, { signal, onProgress }: Up
       return;
     }
     const request = new XMLHttpRequest();
-    const stop = () => request.abort();
+    let isSent = false;
+    const stop = () => {
+      if (!isSent) request.abort(); // the server has it all already: its answer says what was stored
+    };
     request.open('POST', url);
     request.setRequestHeader('accept', 'application/json');
     request.upload.onprogress = ({ loaded, total }) => onProgress?.(total > 0 ? loaded / total : 0);
+    request.upload.onload = () => {
+      isSent = true;
+    };
     request.onload = () => {
       const body = jsonOrUndefined(request.responseText);
       if (request.status >= 200 && request.status < 300) resolve(body);

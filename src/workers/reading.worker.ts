@@ -5,8 +5,6 @@ import { InputError } from '../../shared/errors.js';
 import { encodePoints } from '../../shared/points.js';
 import type { OnProgress, ReadAnswer, ReadRequest } from './messages.js';
 
-const PREVIEW_BYTES = 64 * 1024;
-
 async function sha256Hex(bytes: Uint8Array<ArrayBuffer>): Promise<string> {
   const digest = new Uint8Array(await crypto.subtle.digest('SHA-256', bytes));
   return Array.from(digest, (byte) => byte.toString(16).padStart(2, '0')).join('');
@@ -15,7 +13,7 @@ async function sha256Hex(bytes: Uint8Array<ArrayBuffer>): Promise<string> {
 /** Reads one file whole. Stop is not asked for in here: the page terminates the worker. */
 async function read({ file, fileName, overrides }: ReadRequest, onProgress: OnProgress): Promise<ReadAnswer> {
   const bytes = new Uint8Array(await file.arrayBuffer());
-  const lines = previewLines(bytes.subarray(0, PREVIEW_BYTES));
+  const lines = previewLines(bytes, overrides.encoding);
   try {
     const { sweep, reading, findings } = readSweep(bytes, { fileName, overrides, onProgress });
     const { frequencyHz, realOhm, imaginaryOhm, magnitudeOhm } = sweep;

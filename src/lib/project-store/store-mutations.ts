@@ -31,6 +31,13 @@ function fetchAgain(client: QueryClient, store: ProjectStore, kind: RowKind): Pr
   return Promise.all(touched);
 }
 
+/** Fetches the lists of a kind again, with what depends on them. */
+export function useFetchAgain(kind: RowKind): () => Promise<unknown> {
+  const store = useProjectStore();
+  const client = useQueryClient();
+  return () => fetchAgain(client, store, kind);
+}
+
 export function useAddRow<K extends RowKind>(kind: K) {
   const store = useProjectStore();
   const client = useQueryClient();
