@@ -24,14 +24,14 @@ export async function startDevelopment({ root, port, dataDir, env, say }) {
   const serverPort = (await bindable(0)) ?? 0;
   const publicUrl = `http://127.0.0.1:${port}`;
   const start = () =>
-    startServer({ root, main: [main], port: serverPort, dataDir, env: { ...env, HUMMOCK_PUBLIC_URL: publicUrl }, say });
+    startServer({ root, main, port: serverPort, dataDir, env: { ...env, HUMMOCK_PUBLIC_URL: publicUrl }, say });
   let server = await start();
   const vite = keptChild(
     root,
     process.execPath,
     ['node_modules/vite/bin/vite.js', '--port', String(port), '--strictPort'],
     {
-      HUMMOCK_API: server.url,
+      HUMMOCK_API: `http://127.0.0.1:${serverPort}`,
     },
   );
   if (!(await waitUntil(async () => (await bindable(port)) === undefined, 30_000)))

@@ -3,11 +3,13 @@ import { spawn } from 'node:child_process';
 import { createWriteStream, mkdirSync } from 'node:fs';
 import { join } from 'node:path';
 import { createInterface } from 'node:readline';
+import { setTimeout as sleep } from 'node:timers/promises';
 import { fileURLToPath } from 'node:url';
-import { SetupError, waitUntil } from './processes.mjs';
+import { SetupError } from './processes.mjs';
 import { plainEnvironment } from './setup.mjs';
 
 const READY_WITHIN_MS = 120_000;
+const STOPPED_WITHIN_MS = 20_000;
 
 /**
  * @typedef {object} ServerProcess
@@ -19,13 +21,12 @@ const READY_WITHIN_MS = 120_000;
  */
 
 /**
- * Starts `main` and waits until it is ready to serve. All that it prints goes to `dataDir/logs/server.log`, and what a
- * person has to know is said as well. It sends `{ listening: true, tell: string[] }` once it listens, with the lines
- * that close a start.
+ * Starts `main` and waits until it serves. All that it prints goes to `dataDir/logs/server.log`, and what a person has to
+ * know is said as well.
  * @param {object} given
  * @param {string} given.root
- * @param {string[]} given.main what Node runs: options and the built main.js
- * @param {number} given.port
+ * @param {string} given.main the built main.js
+ * @param {number} given.port 0 for any free one
  * @param {string} given.dataDir
  * @param {Record<string, string | undefined>} given.env
  * @param {(line: string) => void} given.say
@@ -35,84 +36,72 @@ export async function startServer({ root, main, port, dataDir, env, say }) {
   const logs = join(dataDir, 'logs');
   mkdirSync(logs, { recursive: true, mode: 0o700 });
   const logPath = join(logs, 'server.log');
-  const log = createWriteStream(logPath, { flags: 'w', mode: 0o600 });
   const preload = fileURLToPath(new URL('end-with-parent.mjs', import.meta.url));
+  const own = {
+    NODE_ENV: 'production',
+    HUMMOCK_LOG_LEVEL: 'info',
+    HUMMOCK_PORT: String(port),
+    HUMMOCK_DATA_DIR: dataDir,
+  };
   /** @type {import('node:child_process').SpawnOptions} */
   const options = {
     cwd: root,
-    env: {
-      ...plainEnvironment(),
-      NODE_ENV: 'production',
-      HUMMOCK_PORT: String(port),
-      HUMMOCK_DATA_DIR: dataDir,
-      ...env,
-    },
+    env: { ...plainEnvironment(), ...own, ...env },
     stdio: ['ignore', 'pipe', 'pipe', 'ipc'],
     detached: true, // Ctrl-C goes to the starter alone, which stops the server once
   };
-  const child = spawn(process.execPath, ['--enable-source-maps', '--import', preload, ...main], options);
-  /** @type {string[]} */
-  const lastLines = [];
-  for (const stream of [child.stdout, child.stderr]) {
-    if (stream)
-      createInterface({ input: stream }).on('line', (line) => {
-        log.write(`${line}\n`);
-        lastLines.push(line);
-        if (lastLines.length > 12) lastLines.shift();
-        const words = forThePerson(line);
-        if (words !== undefined) say(words);
-      });
-  }
-  const ended = new Promise((/** @type {(how: string) => void} */ resolve) => {
-    child.once('exit', (code, signal) => resolve(signal ? `by ${signal}` : `with status ${code}`));
+  const child = spawn(process.execPath, ['--enable-source-maps', '--import', preload, main], options);
+  const output = followOutput(child, logPath, say);
+  /** @type {Promise<string>} */
+  const ended = new Promise((resolve) => {
+    child.once('close', (code, signal) => resolve(signal ? `by ${signal}` : `with status ${code}`));
     child.once('error', (error) => resolve(error.message));
   });
-  const url = `http://127.0.0.1:${port}`;
-  /** @type {string[]} */
-  const tell = [];
-  let isListening = false; // said by this very process: another server may answer on a port that this one did not get
-  child.on('message', (/** @type {{ listening?: boolean, tell?: string[] }} */ message) => {
-    isListening ||= message.listening === true;
-    tell.push(...(message.tell ?? []));
-  });
-  const server = { pid: child.pid ?? 0, url, tell, ended, stop: () => stop(child, ended) };
-  let how = '';
-  void ended.then((outcome) => (how = outcome));
-  const isInTime = await waitUntil(
-    async () => how !== '' || (isListening && (await answers(url))),
-    READY_WITHIN_MS,
-    100,
-  );
-  if (isInTime && how === '') return server;
-  await server.stop();
-  const what = isInTime ? `ended ${how} before it was ready` : `was not ready within ${READY_WITHIN_MS / 1000} s`;
-  throw new SetupError(`The server ${what}. It said:\n  ${lastLines.join('\n  ')}\nThe whole log: ${logPath}`);
-}
-
-/**
- * Of a structured log line only the links of letters that nobody sends, and faults; any other line as it is.
- * @param {string} line
- */
-function forThePerson(line) {
-  if (!line.startsWith('{')) return line;
-  try {
-    const { level, msg, event, to, link, reqId } = JSON.parse(line);
-    if (event === 'letter') return `Letter to ${to}: ${link ?? msg}`;
-    return level >= 50 ? `Fault in the server: ${msg}${reqId ? ` (reference ${reqId})` : ''}` : undefined;
-  } catch {
-    return line;
+  const late = sleep(READY_WITHIN_MS, 'late', { ref: false });
+  const outcome = await Promise.race([output.ready, ended, late]);
+  if (typeof outcome === 'object') {
+    return { pid: child.pid ?? 0, url: outcome.url, tell: outcome.tell ?? [], ended, stop: () => stop(child, ended) };
   }
+  await stop(child, ended);
+  const what =
+    outcome === 'late' ? `was not ready within ${READY_WITHIN_MS / 1000} s` : `ended ${outcome} before it was ready`;
+  throw new SetupError(`The server ${what}. Its log: ${logPath}`);
 }
 
+/** @typedef {{ event: 'ready', url: string, tell?: string[] }} ReadyLine what the server logs once it serves */
+
 /**
- * Whether a server there is ready to serve.
- * @param {string} url
+ * Keeps what the server prints in its log, and says to the person what concerns them: of structured lines only faults and
+ * the links of letters that nobody sends, any other line as it is.
+ * @param {import('node:child_process').ChildProcess} child
+ * @param {string} logPath
+ * @param {(line: string) => void} say
  */
-export async function answers(url) {
+function followOutput(child, logPath, say) {
+  const log = createWriteStream(logPath, { flags: 'w', mode: 0o600 });
+  /** @type {(line: ReadyLine) => void} */
+  let isReady;
+  /** @type {Promise<ReadyLine>} */
+  const ready = new Promise((resolve) => (isReady = resolve));
+  const follow = (/** @type {string} */ line) => {
+    log.write(`${line}\n`);
+    const entry = structured(line);
+    if (!entry) return say(line);
+    if (entry.event === 'ready') isReady(entry);
+    if (entry.event === 'letter') say(`Letter to ${entry.to}: ${entry.link ?? entry.subject}`);
+    if (entry.level >= 50) say(`Fault in the server: ${[entry.msg, entry.err?.message].filter(Boolean).join(': ')}`);
+  };
+  for (const stream of [child.stdout, child.stderr]) if (stream) createInterface({ input: stream }).on('line', follow);
+  child.once('close', () => log.end());
+  return { ready };
+}
+
+/** @param {string} line */
+function structured(line) {
   try {
-    return (await fetch(`${url}/api/ready`, { signal: AbortSignal.timeout(5_000) })).ok;
+    return line.startsWith('{') ? JSON.parse(line) : undefined;
   } catch {
-    return false;
+    return undefined;
   }
 }
 
@@ -122,7 +111,7 @@ export async function answers(url) {
  */
 async function stop(child, ended) {
   child.kill('SIGTERM');
-  const lastResort = setTimeout(() => child.kill('SIGKILL'), 10_000);
+  const lastResort = setTimeout(() => child.kill('SIGKILL'), STOPPED_WITHIN_MS);
   await ended;
   clearTimeout(lastResort);
 }

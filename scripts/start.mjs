@@ -90,7 +90,7 @@ async function serve(databaseUrl) {
       const given = { root, port, dataDir, env, say };
       const server = isDevelopment
         ? await startDevelopment(given)
-        : await startServer({ ...given, main: [join(root, 'dist/server/main.js')] });
+        : await startServer({ ...given, main: join(root, 'dist/server/main.js') });
       started.push(server.stop);
       return server;
     } catch (error) {

@@ -5,7 +5,7 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { commandPath, installDebianPackages } from './debian.mjs';
 import { startThrowAwayCluster } from './postgres.mjs';
-import { bindable, SetupError } from './processes.mjs';
+import { SetupError } from './processes.mjs';
 import { startServer } from './server-process.mjs';
 import { buildForTests, inTurn, plainEnvironment } from './setup.mjs';
 
@@ -78,8 +78,8 @@ async function browserTests(context) {
   const cluster = await startThrowAwayCluster({ say });
   const server = await startServer({
     root,
-    main: [join(build, 'server', 'main.js')],
-    port: (await bindable(0)) ?? 0,
+    main: join(build, 'server', 'main.js'),
+    port: 0,
     dataDir,
     env: { DATABASE_URL: cluster.url, HUMMOCK_CLIENT_DIR: join(build, 'client') },
     say: () => {},

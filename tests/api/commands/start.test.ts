@@ -29,9 +29,11 @@ client.on('error', () => undefined);
 await client.connect();
 const { rows } = await client.query('SELECT current_setting($1) AS port', ['port']);
 const server = createServer((_request, response) => response.end(String(rows[0].port)));
-server.listen(Number(process.env.HUMMOCK_PORT), '127.0.0.1', () => {
-  console.log('{"level":30,"msg":"a line of the log"}');
-  process.send?.({ listening: true, tell: ['Demo sign-in: someone@school.example'] });
+const port = Number(process.env.HUMMOCK_PORT);
+server.listen(port, '127.0.0.1', () => {
+  console.log(JSON.stringify({ level: 30, msg: 'a line of the log' }));
+  const tell = ['Demo sign-in: someone@school.example'];
+  console.log(JSON.stringify({ level: 30, event: 'ready', url: 'http://127.0.0.1:' + port, tell }));
 });
 process.once('SIGTERM', () => process.exit(0));
 `;
