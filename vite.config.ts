@@ -6,7 +6,6 @@ const apiOrigin = process.env.HUMMOCK_API ?? 'http://127.0.0.1:4180';
 
 export default defineConfig({
   plugins: [react(), tailwindcss()],
-  html: { cspNonce: '__CSP_NONCE__' }, // the server writes each answer's nonce in its place
   html: { cspNonce: '__CSP_NONCE__' }, // the server puts a nonce of each response in its place
   build: {
     outDir: 'dist/client',

@@ -20,6 +20,7 @@ export const router = createBrowserRouter([
     HydrateFallback: Loading,
     children: [
       { index: true, lazy: () => import('./pages/start.js') },
+      { path: 'try', lazy: () => import('./pages/try.js') },
       { path: 'register', lazy: () => import('./pages/register.js') },
       { path: 'verify/:code', lazy: () => import('./pages/verify.js') },
       { path: 'sign-in', lazy: () => import('./pages/sign-in.js') },
@@ -33,6 +34,7 @@ export const router = createBrowserRouter([
           { path: 'me', lazy: () => import('./pages/me.js') },
           { path: 'p/:project', lazy: () => import('./pages/project.js') },
           { path: 'p/:project/add', lazy: () => import('./pages/add-sweeps.js') },
+          { path: 'p/:project/sheet/:sheet', lazy: () => import('./pages/sheet.js') },
           { path: 'p/:project/items', lazy: () => import('./pages/items.js') },
           { path: 'p/:project/item/:item', lazy: () => import('./pages/item.js') },
           { path: 'p/:project/sweep/:sweep', lazy: () => import('./pages/sweep.js') },

@@ -76,11 +76,4 @@ export const account = {
   endSessionOf: (device: string) => `Sign out ${device}`,
   endEverywhere: 'Sign out everywhere',
   endEverywhereHint: 'Also here. Use it when a device is lost.',
-  fields: {
-    missing: 'Fill this in.',
-    tooShort: (least: number) => `Use at least ${least} characters.`,
-    tooLong: (most: number) => `Use at most ${most} characters.`,
-    email: 'Write an address like mara@example.org.',
-    other: 'Look at this once more.',
-  },
 } as const;

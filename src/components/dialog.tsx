@@ -11,12 +11,14 @@ interface DialogProps {
   /** Buttons at the foot. */
   actions?: ReactNode;
   isWide?: boolean;
+  /** Nearly the whole window, for a screen over a screen. */
+  isFull?: boolean;
   /** No way out but its own buttons, for a question that has to be answered. */
   isHeld?: boolean;
 }
 
 /** The browser's modal dialog: it keeps the focus, gives it back, and closes on Esc. Rendered means open. */
-export function Dialog({ title, onClose, children, actions, isWide, isHeld }: DialogProps) {
+export function Dialog({ title, onClose, children, actions, isWide, isFull, isHeld }: DialogProps) {
   const dialog = useRef<HTMLDialogElement>(null);
   const titleId = useId();
   useEffect(() => {
@@ -35,7 +37,7 @@ export function Dialog({ title, onClose, children, actions, isWide, isHeld }: Di
       className={classNames(
         'max-h-[calc(100dvh-2rem)] w-[calc(100vw-2rem)] animate-rise overflow-y-auto rounded-sheet bg-raised p-6 shadow-lift',
         'border border-edge backdrop:bg-ink/40 dark:backdrop:bg-sunken/70',
-        isWide ? 'max-w-4xl' : 'max-w-lg',
+        isFull ? 'max-w-none' : isWide ? 'max-w-4xl' : 'max-w-lg',
       )}
     >
       <div className="mb-4 flex items-start justify-between gap-4">

@@ -9,3 +9,6 @@ export function takeHandedFiles(): File[] {
   handed = [];
   return files;
 }
+export function hasHandedFiles(): boolean {
+  return handed.length > 0;
+}

@@ -9,6 +9,7 @@ import { text } from '../../shared/text.js';
 const SAMPLE = { reOhm: 5.6, fsHz: 46.5, qms: 4.2, resOhm: 38, l1Henry: 0.35e-3, l2Henry: 0.5e-3, r2Ohm: 9 };
 const MOVING_MASS_KG = 0.0142;
 export const SAMPLE_ADDED_MASS_KG = 0.012;
+export const SAMPLE_PISTON_DIAMETER_M = 0.132; // mid-surround to mid-surround
 const POINTS = 600;
 const LOWEST_HZ = 10;
 const HIGHEST_HZ = 20_000;

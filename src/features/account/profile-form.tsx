@@ -2,12 +2,13 @@ import { zodResolver } from '@hookform/resolvers/zod';
 import { useForm } from 'react-hook-form';
 import { z } from 'zod';
 import { type Me, MeSchema } from '../../../shared/contracts/account.js';
+import { schemaWords } from '../../../shared/schema-words.js';
 import { text } from '../../../shared/text.js';
 import { SubmitButton } from '../../components/button.js';
 import { StatusWord } from '../../components/status-word.js';
 import { TextField } from '../../components/text-field.js';
 import { api } from '../../lib/api.js';
-import { schemaWords, showServerErrors } from '../../lib/form-words.js';
+import { showServerErrors } from '../../lib/form-words.js';
 import { meQuery } from '../../lib/me.js';
 import { queryClient } from '../../lib/query-client.js';
 

@@ -2,12 +2,13 @@ import { zodResolver } from '@hookform/resolvers/zod';
 import { useForm } from 'react-hook-form';
 import { z } from 'zod';
 import { RegisterSchema } from '../../../shared/contracts/account.js';
+import { schemaWords } from '../../../shared/schema-words.js';
 import { text } from '../../../shared/text.js';
 import { SubmitButton } from '../../components/button.js';
 import { FormErrors } from '../../components/form-errors.js';
 import { PasswordField } from '../../components/password-field.js';
 import { TextField } from '../../components/text-field.js';
-import { schemaWords, showServerErrors } from '../../lib/form-words.js';
+import { showServerErrors } from '../../lib/form-words.js';
 import { register } from './account-requests.js';
 
 const { name, email, password, teamName } = text.account;

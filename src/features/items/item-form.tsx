@@ -1,12 +1,13 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useForm } from 'react-hook-form';
 import { type CreateItem, CreateItemSchema, ITEM_KINDS, type Item } from '../../../shared/contracts/item.js';
+import { schemaWords } from '../../../shared/schema-words.js';
 import { text } from '../../../shared/text.js';
 import { SubmitButton } from '../../components/button.js';
 import { FormErrors } from '../../components/form-errors.js';
 import { Select } from '../../components/select.js';
 import { TextArea, TextField } from '../../components/text-field.js';
-import { schemaWords, showServerErrors } from '../../lib/form-words.js';
+import { showServerErrors } from '../../lib/form-words.js';
 
 const KINDS = ITEM_KINDS.map((value) => ({ value, label: text.project.kinds[value] }));
 

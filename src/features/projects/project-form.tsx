@@ -1,11 +1,12 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useForm } from 'react-hook-form';
 import { type CreateProject, CreateProjectSchema, type Project } from '../../../shared/contracts/project.js';
+import { schemaWords } from '../../../shared/schema-words.js';
 import { text } from '../../../shared/text.js';
 import { SubmitButton } from '../../components/button.js';
 import { FormErrors } from '../../components/form-errors.js';
 import { TextArea, TextField } from '../../components/text-field.js';
-import { schemaWords, showServerErrors } from '../../lib/form-words.js';
+import { showServerErrors } from '../../lib/form-words.js';
 
 interface ProjectFormProps {
   project?: Project;
