@@ -18,6 +18,17 @@ export const sheet = {
   keptHere: 'Kept in this browser',
   keepIt: 'Keep it',
   keepItHelp: 'Make an account and everything on this sheet moves into it.',
+  tryTitle: 'Try it',
+  trySheetName: 'My first sheet',
+  keep: {
+    title: 'Keep it in your account',
+    body: 'Source files, readings, sheets and kept results move into the project; this browser’s copy is then emptied.',
+    project: 'Project',
+    newProject: 'A new project',
+    projectName: 'From my browser',
+    keep: 'Keep it',
+    moving: 'Moving',
+  },
   tryNotice: 'This sheet lives only in this browser.',
   readOnly: 'You can look and export here. A member of the team can change it.',
   conflict: {

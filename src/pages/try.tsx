@@ -70,7 +70,9 @@ function TryPage() {
             </>
           }
         >
-          <p className="shrink-0 border-b border-line bg-old-wash px-4 py-1 text-note text-old">{text.sheet.tryNotice}</p>
+          <p className="shrink-0 border-b border-line bg-old-wash px-4 py-1 text-note text-old">
+            {text.sheet.tryNotice}
+          </p>
           {panes}
         </PageFrame>
       )}

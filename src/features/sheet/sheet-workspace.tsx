@@ -6,6 +6,7 @@ import { Button } from '../../components/button.js';
 import { useChartStore } from '../../components/chart/use-chart-store.js';
 import { DropPage } from '../../components/drop-page.js';
 import { StatusWord } from '../../components/status-word.js';
+import { handFiles } from '../../lib/handed-files.js';
 import { useProjectStore } from '../../lib/project-store/store-context.js';
 import { ChartPane, chartStateOf } from './chart-pane.js';
 import { ClashDialog } from './clash-dialog.js';
@@ -23,7 +24,6 @@ import { useWorkspaceKeys } from './use-workspace-keys.js';
 const words = text.sheet;
 
 export interface UnpackSlot {
-  readonly files: readonly File[];
   /** The sweeps that were stored, to be drawn. */
   onAdded(sweepIds: readonly string[]): void;
   onClose(): void;
@@ -34,27 +34,31 @@ interface SheetWorkspaceProps {
   unpack: (slot: UnpackSlot) => ReactNode;
   /** The page's frame around the panes; it is given the bar of the sheet. */
   frame: (bar: ReactNode, panes: ReactNode) => ReactNode;
-  /** Files that were dropped on the way here. */
-  handedFiles: readonly File[];
+  /** Files were dropped on the way here: Unpack is open at once, and takes them. */
+  opensUnpack: boolean;
 }
 
 /** A sheet: ledger, chart, results and footnotes over one saved view. */
-export function SheetWorkspace({ sheet, unpack, frame, handedFiles }: SheetWorkspaceProps) {
+export function SheetWorkspace({ sheet, unpack, frame, opensUnpack }: SheetWorkspaceProps) {
   const { readOnlyReason } = useProjectStore();
   const state = useSheetContent(sheet);
-  const [files, setFiles] = useState<readonly File[] | null>(handedFiles.length > 0 ? handedFiles : null);
+  const [isUnpacking, setIsUnpacking] = useState(opensUnpack);
+  const openUnpack = (files: readonly File[] = []) => {
+    handFiles([...files]);
+    setIsUnpacking(true);
+  };
   const pushRange = useRangeHistory((ranges) => state.edit(change(ranges)));
   const chartState = useMemo(() => chartStateOf(state.content), [state.content]);
   const store = useChartStore(chartState, (next, kind) => {
     state.edit(change(next), kind === 'cursor' ? 'cursor' : undefined);
     if (kind === 'range') pushRange(next);
   });
-  const scene = useSheetScene({ sheet, state, openUnpack: (given) => setFiles(given ?? []) });
+  const scene = useSheetScene({ sheet, state, openUnpack });
   useWorkspaceKeys(state);
   const bar = <SheetBar state={state} />;
   return (
     <SheetSceneProvider value={scene}>
-      <DropPage onFiles={setFiles} isOff={readOnlyReason !== undefined}>
+      <DropPage onFiles={openUnpack} isOff={isUnpacking || readOnlyReason !== undefined}>
         {frame(
           bar,
           <PaneLayout
@@ -67,14 +71,13 @@ export function SheetWorkspace({ sheet, unpack, frame, handedFiles }: SheetWorks
           />,
         )}
       </DropPage>
-      {files !== null &&
+      {isUnpacking &&
         unpack({
-          files,
           onAdded: (sweepIds) => {
             state.edit(draw(...sweepIds));
-            setFiles(null);
+            setIsUnpacking(false);
           },
-          onClose: () => setFiles(null),
+          onClose: () => setIsUnpacking(false),
         })}
       {state.clash && <ClashDialog clash={state.clash} onSettle={state.settleClash} />}
     </SheetSceneProvider>
