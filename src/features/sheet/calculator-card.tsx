@@ -72,7 +72,7 @@ export function CalculatorCard({ card, definition }: { card: Card; definition: C
           <FindingsList findings={output.findings} onFrequency={setCursorA} />
         </Fold>
       )}
-      <Fold title={words.inputs} isOpenAtFirst={!cardState.isReady}>
+      <Fold title={words.inputs} isOpenAtFirst={!cardState.isComplete}>
         <CardInputsForm
           card={card}
           definition={definition}
@@ -96,7 +96,7 @@ export function CalculatorCard({ card, definition }: { card: Card; definition: C
 /** Kept, not kept, out of date with what changed, waiting for inputs: always in words. */
 function CardStatus({ cardState }: { cardState: CardState }) {
   const { readOnlyReason } = useSheetScene();
-  const { kept, reasons, run, isReady, canKeep, isKeeping, keep } = cardState;
+  const { kept, reasons, run, isComplete, canKeep, isKeeping, keep } = cardState;
   if (kept && reasons.length > 0) {
     const what = reasons.map((reason) => words.reasons[reason]).join(', ');
     return <StatusWord tone="old">{words.outOfDateBecause(what)}</StatusWord>;
@@ -109,7 +109,7 @@ function CardStatus({ cardState }: { cardState: CardState }) {
       </span>
     );
   }
-  if (!isReady) return <StatusWord tone="plain">{words.noInputs}</StatusWord>;
+  if (!isComplete) return <StatusWord tone="plain">{words.noInputs}</StatusWord>;
   return (
     <span className="flex flex-wrap items-center gap-2">
       <StatusWord tone="plain">{run.kind === 'stopped' ? words.stopped : words.notKept}</StatusWord>
@@ -123,7 +123,7 @@ function CardStatus({ cardState }: { cardState: CardState }) {
 }
 
 function RunButton({ cardState }: { cardState: CardState }) {
-  const { run, isReady, stop, runAgain, output } = cardState;
+  const { run, isComplete, stop, runAgain, output } = cardState;
   if (run.kind === 'running') {
     return (
       <Button data-stop icon={<Square size={16} aria-hidden />} onClick={stop}>
@@ -135,7 +135,7 @@ function RunButton({ cardState }: { cardState: CardState }) {
     <Button
       data-run
       icon={<Play size={16} aria-hidden />}
-      reason={isReady ? undefined : words.noInputs}
+      reason={isComplete ? undefined : words.noInputs}
       onClick={runAgain}
     >
       {output ? words.runAgain : words.run}

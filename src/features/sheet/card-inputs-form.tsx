@@ -70,7 +70,7 @@ function RoleInputs({ declaration, inputs, onInputs }: RoleInputsProps) {
           label={<span className="sr-only">{words.chooseSweep(label)}</span>}
           value=""
           options={[
-            { value: '', label: inputs.length > 0 && most > 1 ? words.addInput(label) : words.chooseSweep(label) },
+            { value: '', label: promptFor(label, inputs.length, most) },
             ...free.map(({ id, name }) => ({ value: id, label: name })),
           ]}
           onValue={add}
@@ -122,4 +122,9 @@ function InputRow({ input, declaration, onInput }: InputRowProps) {
       })}
     </div>
   );
+}
+
+function promptFor(label: string, count: number, most: number): string {
+  if (count === 0) return words.chooseSweep(label);
+  return most > 1 ? words.addInput(label) : words.changeInput(label);
 }

@@ -17,7 +17,7 @@ import type { PaneId } from './pane.js';
 import { type ScreenSize, useScreenSize } from './use-screen-size.js';
 
 const words = text.sheet;
-const WIDTHS: Layout = { ledger: 21, chart: 52, results: 27 };
+const WIDTHS: Layout = { ledger: 23, chart: 50, results: 27 };
 const STEP = 4; // per cent, of "wider" and "narrower"
 
 export type PaneContent = Readonly<Record<PaneId, (sizeMenu: ReactNode) => ReactNode>>;

@@ -48,10 +48,10 @@ export function useCalculatorRun({ definition, parts, inputs, points, isAutomati
   const identity = resultIdentity(parts);
   const wanted = useRef({ parts, inputs, points });
   wanted.current = { parts, inputs, points };
-  const isReady =
-    Object.entries(definition.roles).every(
-      ([role, { least }]) => inputs.filter((input) => input.role === role).length >= least,
-    ) && inputs.every(({ sweep }) => points.has(sweep.revision.pointsSha256));
+  const isComplete = Object.entries(definition.roles).every(
+    ([role, { least }]) => inputs.filter((input) => input.role === role).length >= least,
+  );
+  const isReady = isComplete && inputs.every(({ sweep }) => points.has(sweep.revision.pointsSha256));
 
   const run = useCallback(() => {
     const { parts: asked, inputs: given, points: known } = wanted.current;
@@ -102,7 +102,7 @@ export function useCalculatorRun({ definition, parts, inputs, points, isAutomati
 
   useEffect(() => () => job.current?.stop(), []);
   const stop = useCallback(() => job.current?.stop(), []);
-  return { state, run, stop, isReady };
+  return { state, run, stop, isReady, isComplete };
 }
 
 export function outputOf(state: RunState): Output | undefined {

@@ -40,6 +40,7 @@ export function useCard(card: Card, definition: CalculatorDefinition) {
     output,
     run: run.state,
     isReady: run.isReady,
+    isComplete: run.isComplete,
     stop: run.stop,
     /** Computes anew what the card asks now. A kept result stays where it was; the card lets go of it. */
     runAgain: () => {
