@@ -36,9 +36,11 @@ export class Access {
     const place = await this.placeOf(actor, target);
     const isOpen = place !== undefined && !place.isGone && (!place.isDeleted || action.endsWith(':restore'));
     if (!isOpen) throw new AppError('not-found', text.server.notFound);
-    const role = place.role ?? (place.isInvented && isReading(action) ? 'viewer' : null);
+    const role = place.role ?? (place.isInvented ? 'viewer' : null);
     if (role === null) throw new AppError('not-found', text.server.notFound);
-    if (!mayDo(role, action)) throw new AppError('access-denied', text.server.accessDenied(role), { role, action });
+    const isVisitor = place.role === null; // of the demo: looks, and no more than that
+    if (!mayDo(role, action) || (isVisitor && !isReading(action)))
+      throw new AppError('access-denied', text.server.accessDenied(role), { role, action });
     if (!isReading(action) && !actor.isVerified) throw new AppError('not-verified', text.server.notVerified);
     return { teamId: place.teamId, projectId: place.projectId, role };
   }

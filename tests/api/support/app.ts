@@ -13,6 +13,8 @@ import type { Letter, Mailer } from '../../../server/mail/mailer.js';
 import { Client } from './client.js';
 import { makeDatabase } from './database.js';
 
+export const TEST_SECRET = 'a secret of the tests, longer than thirty-two characters';
+
 export interface TestApp {
   readonly url: string;
   readonly dataSource: DataSource;
@@ -38,7 +40,7 @@ export async function startApp(options: Partial<AppInputs> = {}): Promise<TestAp
     databaseUrl: database.url,
     jobs: graphileJobs,
     logger,
-    secret: 'a secret of the tests, longer than thirty-two characters',
+    secret: TEST_SECRET,
     publicUrl: () => url,
     clientDir: 'tests/fixtures/no-client',
     trustProxy: false,

@@ -56,6 +56,15 @@ export class Client {
     return { status: answer.status, headers: answer.headers, body: parsed as Body, bytes };
   }
 
+  /** Only the status: also of an answer that never ends, such as a stream of events. */
+  async status(method: string, path: string): Promise<number> {
+    const leave = new AbortController();
+    const headers = { origin: this.url, ...this.headers, cookie: this.cookieHeader(path) };
+    const answer = await fetch(`${this.url}${path}`, { method, headers, signal: leave.signal });
+    leave.abort();
+    return answer.status;
+  }
+
   private cookieHeader(path: string): string {
     const sent = [...this.cookies].filter(([, cookie]) => path.startsWith(cookie.path));
     return sent.map(([name, cookie]) => `${name}=${cookie.value}`).join('; ');
