@@ -5,6 +5,8 @@ import type { FitParameter, NormalSums } from '../numerics/least-squares-problem
 import { type Loss, lossValue, lossWeight } from '../numerics/losses.js';
 import { type DriverModel, driverImpedance, driverParameters } from './driver-impedance.js';
 import { type FrequencyGrid, frequencyGrid } from './frequency-grid.js';
+import { fusedKernel } from './kernels/fused-kernel.js';
+import type { Kernel } from './kernels/kernel-data.js';
 
 /** A sweep made ready for fitting. Shapes (n). Without phase, `im` and `phaseRad` are 0 and only |Z| is fitted. */
 export interface SweepData {
@@ -38,20 +40,28 @@ export class SweepTerm {
   readonly parameters: readonly FitParameter[];
   readonly groupSize: 1 | 2;
   readonly rows: number;
-  private readonly z: ComplexArray;
-  private readonly columns: readonly ComplexArray[];
+  private readonly kernel: Kernel | null;
+  private scratch: { z: ComplexArray; columns: ComplexArray[] } | null = null; // made when first needed
 
   constructor(
     readonly model: DriverModel,
     readonly data: SweepData,
     readonly weights: Float64Array, // (n), 0 = switched off
   ) {
-    const n = weights.length;
     this.parameters = driverParameters(model);
     this.groupSize = data.hasPhase ? 2 : 1;
-    this.rows = n * this.groupSize;
-    this.z = complexArray(n);
-    this.columns = this.parameters.map(() => complexArray(n));
+    this.rows = weights.length * this.groupSize;
+    this.kernel = data.hasPhase ? fusedKernel(model) : null;
+  }
+
+  /** Model impedance and, with `derivatives`, ∂ln Z/∂(scaled parameter) at the values. */
+  private evaluate(values: ArrayLike<number>, derivatives: boolean): { z: ComplexArray; columns: ComplexArray[] } {
+    const n = this.weights.length;
+    this.scratch ??= { z: complexArray(n), columns: [] };
+    const { z, columns } = this.scratch;
+    if (derivatives) while (columns.length < this.parameters.length) columns.push(complexArray(n));
+    driverImpedance(this.model, values, this.data.grid, z, derivatives ? columns : undefined);
+    return this.scratch;
   }
 
   /** Rows that carry weight. */
@@ -63,15 +73,21 @@ export class SweepTerm {
 
   /** Weighted residual to `out` from row `at` on. */
   residual(values: ArrayLike<number>, out: Float64Array, at = 0): void {
-    driverImpedance(this.model, values, this.data.grid, this.z);
-    this.writeResidual(out, at);
+    const { z } = this.evaluate(values, false);
+    const { weights, groupSize } = this;
+    const pair = new Float64Array(2);
+    for (let i = 0; i < weights.length; i++) {
+      this.residualAt(i, z, pair);
+      out[at + groupSize * i] = weights[i]! * pair[0]!;
+      if (groupSize === 2) out[at + 2 * i + 1] = weights[i]! * pair[1]!;
+    }
   }
 
   /** ∂(weighted residual)/∂(scaled parameter k) to out[k·stride + at …]. */
   jacobian(values: ArrayLike<number>, out: Float64Array, stride = this.rows, at = 0): void {
-    driverImpedance(this.model, values, this.data.grid, this.z, this.columns);
+    const { columns } = this.evaluate(values, true);
     const { weights, groupSize } = this;
-    this.columns.forEach(({ re, im }, k) => {
+    columns.forEach(({ re, im }, k) => {
       const start = k * stride + at;
       for (let i = 0; i < weights.length; i++) {
         out[start + groupSize * i] = -weights[i]! * re[i]!;
@@ -82,8 +98,12 @@ export class SweepTerm {
 
   /** Cost, gradient and curvature (lower triangle) with respect to the scaled parameters, set anew. */
   accumulate(values: ArrayLike<number>, loss: Loss, out: NormalSums): void {
-    driverImpedance(this.model, values, this.data.grid, this.z, this.columns);
-    const { weights, columns, groupSize } = this;
+    if (this.kernel) {
+      this.kernel(values, this.data, this.weights, loss, out);
+      return;
+    }
+    const { z: model, columns } = this.evaluate(values, true);
+    const { weights, groupSize } = this;
     const p = columns.length;
     out.gradient.fill(0);
     out.hessian.fill(0);
@@ -93,7 +113,7 @@ export class SweepTerm {
     for (let i = 0; i < weights.length; i++) {
       const weight = weights[i]!;
       if (weight === 0) continue;
-      this.residualAt(i, pair);
+      this.residualAt(i, model, pair);
       const s = weight * weight;
       const z = (s * (pair[0]! * pair[0]! + pair[1]! * pair[1]!)) / squareScale;
       out.cost += 0.5 * squareScale * lossValue(loss.kind, z);
@@ -107,19 +127,9 @@ export class SweepTerm {
     }
   }
 
-  private writeResidual(out: Float64Array, at: number): void {
-    const { weights, groupSize } = this;
-    const pair = new Float64Array(2);
-    for (let i = 0; i < weights.length; i++) {
-      this.residualAt(i, pair);
-      out[at + groupSize * i] = weights[i]! * pair[0]!;
-      if (groupSize === 2) out[at + 2 * i + 1] = weights[i]! * pair[1]!;
-    }
-  }
-
   /** [ln|Z/Zmodel|, arg(Z/Zmodel)]; the second is 0 where there is no phase. */
-  private residualAt(i: number, pair: Float64Array): void {
-    const { data, z } = this;
+  private residualAt(i: number, z: ComplexArray, pair: Float64Array): void {
+    const { data } = this;
     pair[0] = data.logMagnitude[i]! - 0.5 * Math.log(z.re[i]! * z.re[i]! + z.im[i]! * z.im[i]!);
     if (this.groupSize === 1) return;
     const turn = data.phaseRad[i]! - Math.atan2(z.im[i]!, z.re[i]!);

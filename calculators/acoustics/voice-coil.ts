@@ -1,6 +1,6 @@
 import type { ComplexArray } from '../numerics/complex-array.js';
 import type { FitParameter } from '../numerics/least-squares-problem.js';
-import type { FrequencyGrid } from './frequency-grid.js';
+import { type FrequencyGrid, REFERENCE_OMEGA } from './frequency-grid.js';
 
 /**
  * Blocked impedance of a voice coil without its DC resistance, s = jω, time factor e^{+jωt}, in ohm:
@@ -16,8 +16,6 @@ import type { FrequencyGrid } from './frequency-grid.js';
 export const COIL_MODELS = ['inductor', 'inductor+eddy', 'power-law', 'split-power-law', 'semi-inductance'] as const;
 export type CoilModel = (typeof COIL_MODELS)[number];
 
-/** Angular frequency to which power laws are referred inside, so that amplitude and exponent decorrelate: 2π·1 kHz. */
-export const REFERENCE_OMEGA = 2000 * Math.PI;
 const LOG_REFERENCE = Math.log(REFERENCE_OMEGA);
 
 const logged = (id: string, lower: number, upper: number): FitParameter => ({ id, logScaled: true, lower, upper });

@@ -1,6 +1,6 @@
 import { driverImpedance, FREE_AIR } from '../acoustics/driver-impedance.js';
-import { frequencyGrid } from '../acoustics/frequency-grid.js';
-import { coilImpedance, REFERENCE_OMEGA } from '../acoustics/voice-coil.js';
+import { frequencyGrid, REFERENCE_OMEGA } from '../acoustics/frequency-grid.js';
+import { coilImpedance } from '../acoustics/voice-coil.js';
 import { complexArray } from '../numerics/complex-array.js';
 import type { ModelChoice } from './candidates.js';
 

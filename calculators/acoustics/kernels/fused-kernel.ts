@@ -1,0 +1,34 @@
+import type { DriverModel } from '../driver-impedance.js';
+import type { SuspensionModel } from '../suspension.js';
+import type { CoilModel } from '../voice-coil.js';
+import { inductorConstant, inductorCreep, inductorRelaxing } from './inductor.js';
+import { inductorEddyConstant, inductorEddyCreep, inductorEddyRelaxing } from './inductor-eddy.js';
+import type { Kernel } from './kernel-data.js';
+import { powerLawConstant, powerLawCreep, powerLawRelaxing } from './power-law.js';
+import { semiInductanceConstant, semiInductanceCreep, semiInductanceRelaxing } from './semi-inductance.js';
+import { splitPowerLawConstant, splitPowerLawCreep, splitPowerLawRelaxing } from './split-power-law.js';
+
+const KERNELS: Readonly<Record<CoilModel, Readonly<Record<SuspensionModel, Kernel>>>> = {
+  inductor: { constant: inductorConstant, creep: inductorCreep, relaxing: inductorRelaxing },
+  'inductor+eddy': {
+    constant: inductorEddyConstant,
+    creep: inductorEddyCreep,
+    relaxing: inductorEddyRelaxing,
+  },
+  'power-law': { constant: powerLawConstant, creep: powerLawCreep, relaxing: powerLawRelaxing },
+  'split-power-law': {
+    constant: splitPowerLawConstant,
+    creep: splitPowerLawCreep,
+    relaxing: splitPowerLawRelaxing,
+  },
+  'semi-inductance': {
+    constant: semiInductanceConstant,
+    creep: semiInductanceCreep,
+    relaxing: semiInductanceRelaxing,
+  },
+};
+
+/** The unrolled loop for a complex sweep of a driver in free air; null where a load needs the general one. */
+export function fusedKernel({ coil, suspension, load }: DriverModel): Kernel | null {
+  return load.mass || load.box !== 'none' ? null : KERNELS[coil][suspension];
+}
