@@ -137,9 +137,10 @@ function stopAll() {
 
 /** @param {unknown} error */
 async function fail(error) {
-  if (!(error instanceof Ending)) console.error(error instanceof SetupError ? error.message : error);
+  const isAsked = isEnding; // what a signal cuts short is no fault
+  if (!isAsked) console.error(error instanceof SetupError ? error.message : error);
   await stopAll();
-  process.exit(error instanceof Ending ? 0 : 1);
+  process.exit(isAsked ? 0 : 1);
 }
 
 for (const signal of /** @type {const} */ (['SIGINT', 'SIGTERM', 'SIGHUP'])) {
