@@ -5,13 +5,14 @@ import { readSweep } from '../../calculators/reading/read-sweep.js';
 import { InputError } from '../../shared/errors.js';
 import { encodePoints } from '../../shared/points.js';
 import type { ReadFile, ReadReply, ReadRequest } from './messages.js';
+import { storable } from './storable.js';
 
 async function read({ path, fileName, overrides }: ReadRequest): Promise<ReadFile> {
   const { sweep, reading, findings } = readSweep(await readFile(path), { fileName, overrides });
   const canonicalPoints = encodePoints(sweep);
   return {
-    reading,
-    findings,
+    reading: storable(reading),
+    findings: storable(findings),
     hasPhase: sweep.realOhm !== undefined,
     points: sweep.frequencyHz.length,
     minFrequencyHz: sweep.frequencyHz[0] ?? 0,
