@@ -58,6 +58,7 @@ export const project = {
     curve: 'Curve',
     sweeps: 'Sweeps',
   },
+  curveOf: (name: string) => `Shape of the impedance of ${name}`,
   chooseRow: (name: string) => `Choose ${name}`,
   chooseAll: 'Choose all',
   roles: {
@@ -137,6 +138,7 @@ export const project = {
   revisions: 'Revisions',
   revision: (number: number) => `Revision ${number}`,
   newest: 'newest',
+  aboutSweep: 'About this sweep',
   activity: 'Activity',
   outOfDate: 'Out of date',
 } as const;

@@ -26,10 +26,13 @@ export const unpack = {
     stored: 'Stored',
     'not-stored': 'Not stored',
   },
-  count: (done: number, total: number) => `${done} of ${total} read`,
-  storedCount: (done: number, total: number) => `${done} of ${total} stored`,
+  count: (done: number, total: number) => `${done} of ${total} read.`,
+  storedCount: (done: number, total: number) => `${done} of ${total} stored.`,
   notRead: (count: number, total: number) => `${count} of ${total} could not be read.`,
   notStored: (count: number, total: number) => `${count} of ${total} could not be stored.`,
+  guessOf: (what: string) => `${what}: a guess`,
+  lacksMass: 'The added mass is missing',
+  lacksVolume: 'The test volume is missing',
   removeFile: (name: string) => `Remove ${name}`,
   removeRefused: 'Remove what cannot be read',
   progressOf: (name: string) => `Progress of ${name}`,
@@ -116,6 +119,8 @@ export const unpack = {
 
   rule: {
     intro: 'How the columns are read, and why. Change what is wrong; the file itself stays as it is.',
+    inShort: (separator: string, decimal: string, units: string) =>
+      `${separator} between columns, decimal ${decimal.toLowerCase()}, ${units}`,
     yours: 'set by you',
     guess: 'a guess',
     undo: 'Back to what was recognised',

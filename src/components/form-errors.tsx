@@ -6,7 +6,7 @@ interface FormErrorsProps<Values extends FieldValues> {
   errors: FieldErrors<Values>;
   /** How each field is called on the screen; a link leads to the field of that name. */
   labels: Partial<Record<keyof Values & string, string>>;
-  /** Counts the tries: after each one with errors the list takes the focus. */
+  /** Counts the tries: an error of the whole form takes the focus after each; one of a field leaves it to the field. */
   tries: number;
 }
 
@@ -19,8 +19,8 @@ export function FormErrors<Values extends FieldValues>({ errors, labels, tries }
   });
   const whole = errors.root?.message;
   useEffect(() => {
-    if (tries > 0 && (found.length > 0 || whole)) list.current?.focus();
-  }, [tries, whole, found.length]);
+    if (tries > 0 && whole) list.current?.focus();
+  }, [tries, whole]);
   if (found.length === 0 && !whole) return null;
   return (
     <div ref={list} role="alert" tabIndex={-1} className="border-s-4 border-out bg-out-wash px-4 py-3">

@@ -31,7 +31,13 @@ export function Tabs<Id extends string>({ label, tabs, chosen, onChoose }: TabsP
   const open = tabs.find((tab) => tab.id === chosen);
   return (
     <div className="flex min-h-0 min-w-0 flex-col">
-      <div ref={list} role="tablist" aria-label={label} className="flex gap-1 border-b border-line" onKeyDown={move}>
+      <div
+        ref={list}
+        role="tablist"
+        aria-label={label}
+        className="flex gap-1 overflow-x-auto border-b border-line"
+        onKeyDown={move}
+      >
         {tabs.map((tab) => (
           <button
             key={tab.id}
@@ -43,7 +49,7 @@ export function Tabs<Id extends string>({ label, tabs, chosen, onChoose }: TabsP
             tabIndex={tab.id === chosen ? 0 : -1}
             onClick={() => onChoose(tab.id)}
             className={classNames(
-              'min-h-(--control) border-b-2 px-3',
+              'min-h-(--control) shrink-0 border-b-2 px-2 -outline-offset-2!',
               tab.id === chosen
                 ? 'border-heather font-semibold text-ink'
                 : 'border-transparent text-soft hover:text-ink',

@@ -49,7 +49,12 @@ function Home({ me }: { me: Me }) {
   const add = useAddFiles(projects ?? [], () => setOpen('add'));
   const newReason = reasonAgainst('project:create', team, me.verified);
   const newButton = (
-    <Button icon={<Plus size={18} aria-hidden />} reason={newReason} onClick={() => setOpen('new')}>
+    <Button
+      look={projects?.length === 0 ? 'primary' : 'plain'}
+      icon={<Plus size={18} aria-hidden />}
+      reason={newReason}
+      onClick={() => setOpen('new')}
+    >
       {text.project.newProject}
     </Button>
   );
@@ -91,9 +96,11 @@ function HomeSections({ me, projects, newButton }: { me: Me; projects: Project[]
           <ProjectList projects={projects} />
         )}
       </Section>
-      <Section title={text.project.recentSheets}>
-        <RecentSheets projects={projects} />
-      </Section>
+      {projects.length > 0 && (
+        <Section title={text.project.recentSheets}>
+          <RecentSheets projects={projects} />
+        </Section>
+      )}
     </>
   );
 }

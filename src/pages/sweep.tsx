@@ -1,4 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
+import { type ReactNode, useState } from 'react';
 import { useNavigate, useParams } from 'react-router-dom';
 import type { SweepRow } from '../../shared/contracts/sweep.js';
 import { text } from '../../shared/text.js';
@@ -7,7 +8,7 @@ import { ErrorBar } from '../components/error-bar.js';
 import { Loading } from '../components/loading.js';
 import { PageFrame } from '../components/page-frame.js';
 import { ProjectScope, type Scope } from '../components/project-scope.js';
-import { Section } from '../components/section.js';
+import { Tabs } from '../components/tabs.js';
 import { TeamSelect } from '../components/team-select.js';
 import { showToast } from '../components/toast-store.js';
 import { Trail } from '../components/trail.js';
@@ -45,24 +46,32 @@ function SweepPage({ project, me }: Scope) {
       {error && <ErrorBar error={error} />}
       {!sweep && !error && <Loading />}
       {sweep && (
-        <>
-          <Section title={text.project.readingRule}>
-            <ReadAgain key={sweep.revision.id} sweep={sweep} />
-          </Section>
-          <div className="grid gap-x-8 lg:grid-cols-3">
-            <Section title={text.project.conditions}>
-              <StoredConditions key={sweep.version} sweep={sweep} />
-            </Section>
-            <Section title={text.project.sweepFacts}>
-              <SweepFacts sweep={sweep} />
-            </Section>
-            <Section title={text.project.revisions}>
-              <RevisionList sweep={sweep} />
-            </Section>
-          </div>
-        </>
+        <ReadAgain key={sweep.revision.id} sweep={sweep} aside={(rule) => <SweepTabs sweep={sweep} rule={rule} />} />
       )}
     </PageFrame>
+  );
+}
+
+type TabId = 'conditions' | 'facts' | 'rule' | 'revisions';
+
+function SweepTabs({ sweep, rule }: { sweep: SweepRow; rule: ReactNode }) {
+  const [chosen, setChosen] = useState<TabId>('conditions');
+  return (
+    <Tabs<TabId>
+      label={text.project.aboutSweep}
+      chosen={chosen}
+      onChoose={setChosen}
+      tabs={[
+        {
+          id: 'conditions',
+          label: text.unpack.tellTitle,
+          content: <StoredConditions key={sweep.version} sweep={sweep} />,
+        },
+        { id: 'facts', label: text.project.sweepFacts, content: <SweepFacts sweep={sweep} /> },
+        { id: 'rule', label: text.project.readingRule, content: rule },
+        { id: 'revisions', label: text.project.revisions, content: <RevisionList sweep={sweep} /> },
+      ]}
+    />
   );
 }
 

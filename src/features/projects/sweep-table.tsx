@@ -1,10 +1,14 @@
+import { useQuery } from '@tanstack/react-query';
 import { useWindowVirtualizer } from '@tanstack/react-virtual';
 import { useRef } from 'react';
 import { Link } from 'react-router-dom';
 import type { SweepRow } from '../../../shared/contracts/sweep.js';
 import { text } from '../../../shared/text.js';
+import { MiniCurve } from '../../components/chart/mini-curve.js';
 import { StatusWord } from '../../components/status-word.js';
 import { When } from '../../components/when.js';
+import { useProjectStore } from '../../lib/project-store/store-context.js';
+import { pointsQuery } from '../../lib/project-store/store-queries.js';
 import { shownQuantity, shownRange } from '../../lib/quantity-words.js';
 
 const { columns } = text.project;
@@ -30,6 +34,7 @@ export function SweepTable({ projectId, sweeps, itemNames, chosen, onChoose }: S
   const rows = virtual.getVirtualItems();
   const above = Math.max(0, (rows[0]?.start ?? 0) - virtual.options.scrollMargin);
   const below = virtual.getTotalSize() - ((rows.at(-1)?.end ?? 0) - virtual.options.scrollMargin);
+  const hasItems = itemNames.size > 0;
   const allChosen = sweeps.length > 0 && sweeps.every(({ id }) => chosen.has(id));
   return (
     <div ref={frame}>
@@ -56,8 +61,13 @@ export function SweepTable({ projectId, sweeps, itemNames, chosen, onChoose }: S
               {columns.name}
             </th>
             <th scope="col" className="hidden py-2 pe-3 text-start md:table-cell">
-              {columns.item}
+              {columns.curve}
             </th>
+            {hasItems && (
+              <th scope="col" className="hidden py-2 pe-3 text-start md:table-cell">
+                {columns.item}
+              </th>
+            )}
             <th scope="col" className="hidden py-2 pe-3 text-start sm:table-cell">
               {columns.range}
             </th>
@@ -80,7 +90,7 @@ export function SweepTable({ projectId, sweeps, itemNames, chosen, onChoose }: S
                   {...{ projectId, sweep, onChoose }}
                   rowIndex={index + 2}
                   isChosen={chosen.has(sweep.id)}
-                  itemName={itemNames.get(sweep.itemId ?? '') ?? ''}
+                  itemName={hasItems ? (itemNames.get(sweep.itemId ?? '') ?? '') : undefined}
                 />
               )
             );
@@ -103,6 +113,7 @@ function Gap({ height }: { height: number }) {
 /** What was told of how it was held: "Driver with added mass, 12.5 g". */
 export function conditionWords({ conditions }: SweepRow): string {
   const { role, addedMassKg, testVolumeM3 } = conditions;
+  if (role === 'sweep') return '';
   const told = [
     addedMassKg === undefined ? '' : shownQuantity(addedMassKg, 'kg'),
     testVolumeM3 === undefined ? '' : shownQuantity(testVolumeM3, 'm³'),
@@ -114,7 +125,7 @@ interface RowProps extends Pick<SweepTableProps, 'projectId' | 'onChoose'> {
   sweep: SweepRow;
   rowIndex: number;
   isChosen: boolean;
-  itemName: string;
+  itemName: string | undefined;
 }
 function Row({ projectId, sweep, onChoose, rowIndex, isChosen, itemName }: RowProps) {
   const { id, name, revision, createdAt } = sweep;
@@ -137,8 +148,12 @@ function Row({ projectId, sweep, onChoose, rowIndex, isChosen, itemName }: RowPr
           {name}
         </Link>
         <span className="block text-note text-soft">{conditionWords(sweep)}</span>
+        <span className="block text-note text-soft sm:hidden">{shownRange(minFrequencyHz, maxFrequencyHz)}</span>
       </th>
-      <td className="hidden py-2 pe-3 md:table-cell">{itemName}</td>
+      <td className="hidden py-1 pe-3 md:table-cell">
+        <RowCurve sweep={sweep} />
+      </td>
+      {itemName !== undefined && <td className="hidden py-2 pe-3 md:table-cell">{itemName}</td>}
       <td className="hidden py-2 pe-3 whitespace-nowrap sm:table-cell">
         <span className="font-num">{shownRange(minFrequencyHz, maxFrequencyHz)}</span>
         <span className="block text-note text-soft">
@@ -153,6 +168,17 @@ function Row({ projectId, sweep, onChoose, rowIndex, isChosen, itemName }: RowPr
         <When iso={createdAt} />
       </td>
     </tr>
+  );
+}
+
+/** The shape of the curve at a glance; fetched only for rows in view. */
+function RowCurve({ sweep }: { sweep: SweepRow }) {
+  const store = useProjectStore();
+  const { data: points } = useQuery(pointsQuery(store, sweep.revision));
+  return (
+    <div className="h-9 w-24 rounded-tag bg-sheet p-0.5">
+      {points && <MiniCurve points={points} label={text.project.curveOf(sweep.name)} className="h-full w-full" />}
+    </div>
   );
 }
 

@@ -4,7 +4,7 @@ import { Button } from '../../components/button.js';
 import { type StatusTone, StatusWord } from '../../components/status-word.js';
 import { classNames } from '../../lib/class-names.js';
 import { errorWords } from '../../lib/error-words.js';
-import type { Entry, EntryState } from './unpack-entry.js';
+import { canBeStored, type Entry, type EntryState, firstQuestion, missingCondition } from './unpack-entry.js';
 
 const STATE_LOOK: Record<EntryState, { tone: StatusTone; sign?: string }> = {
   reading: { tone: 'plain' },
@@ -28,7 +28,10 @@ interface FileListProps {
 /** Every file with its own state, progress and a way out. */
 export function FileList({ entries, chosenId, isStoring, onChoose, onRemove }: FileListProps) {
   return (
-    <ul aria-label={text.unpack.filesTitle} className="max-h-[60dvh] overflow-y-auto border-t border-line">
+    <ul
+      aria-label={text.unpack.filesTitle}
+      className="max-h-[50dvh] min-h-0 overflow-y-auto border-t border-line md:max-h-none"
+    >
       {entries.map((entry) => (
         <li
           key={entry.id}
@@ -81,9 +84,12 @@ function EntryStatus({ entry }: { entry: Entry }) {
   );
 }
 
-function reasonOf({ state, outcome, sameAs, error }: Entry): string {
+function reasonOf(entry: Entry): string {
+  const { state, outcome, sameAs, error } = entry;
   if (state === 'refused' && outcome && 'refused' in outcome) return text.errors.refusedFiles[outcome.refused.code];
   if (state === 'here' && sameAs !== undefined) return text.unpack.alreadyHereAs(sameAs);
   if (state === 'not-stored') return errorWords(error).title;
-  return '';
+  const missing = canBeStored(entry) ? missingCondition(entry) : undefined;
+  if (missing) return missing === 'addedMassKg' ? text.unpack.lacksMass : text.unpack.lacksVolume;
+  return state === 'look' ? firstQuestion(entry) : '';
 }

@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { useEffect, useMemo, useState } from 'react';
+import { type ReactNode, useEffect, useMemo, useState } from 'react';
 import type { ReadingOverrides } from '../../../shared/contracts/reading.js';
 import type { SweepRow } from '../../../shared/contracts/sweep.js';
 import { text } from '../../../shared/text.js';
@@ -16,8 +16,14 @@ import { ReadingRule } from './reading-rule.js';
 import { SweepPreview } from './sweep-preview.js';
 import { newEntry, ruleToShow, stateAfterReading } from './unpack-entry.js';
 
-/** Corrects the reading rule of a stored sweep: shows what it gives, and stores it as a new revision. */
-export function ReadAgain({ sweep }: { sweep: SweepRow }) {
+interface ReadAgainProps {
+  sweep: SweepRow;
+  /** What stands beside the curve; the rule is handed over to find its place there. */
+  aside: (rule: ReactNode) => ReactNode;
+}
+
+/** A stored sweep as its rule reads it; a corrected rule shows what it gives, and is stored as a new revision. */
+export function ReadAgain({ sweep, aside }: ReadAgainProps) {
   const store = useProjectStore();
   const reread = useReread();
   const stored = useMemo(() => toldOverrides(sweep.revision.reading), [sweep.revision.reading]);
@@ -44,23 +50,26 @@ export function ReadAgain({ sweep }: { sweep: SweepRow }) {
     const done = text.project.readAgainDone(revision.number);
     showToast({ message: isUnchanged ? `${done} ${text.project.sameReading}` : done });
   };
+  const ruleForm = (
+    <div className="flex flex-col gap-4">
+      {rule && <ReadingRule reading={rule} overrides={overrides} onChange={setOverrides} />}
+      <p className="text-note text-soft">{text.project.readAgainHint}</p>
+      <Button
+        look="primary"
+        className="self-start"
+        reason={store.readOnlyReason ?? (isSame ? text.project.sameRule : undefined)}
+        isBusy={reread.isPending}
+        onClick={() => void storeReading().catch(() => {})}
+      >
+        {text.project.readAgain}
+      </Button>
+      {reread.isError && <ErrorBar error={reread.error} />}
+    </div>
+  );
   return (
-    <div className="grid gap-6 lg:grid-cols-[20rem_minmax(0,1fr)]">
-      <div className="flex flex-col gap-4">
-        {rule && <ReadingRule reading={rule} overrides={overrides} onChange={setOverrides} />}
-        <p className="text-note text-soft">{text.project.readAgainHint}</p>
-        <Button
-          look="primary"
-          className="self-start"
-          reason={store.readOnlyReason ?? (isSame ? text.project.sameRule : undefined)}
-          isBusy={reread.isPending}
-          onClick={() => void storeReading().catch(() => {})}
-        >
-          {text.project.readAgain}
-        </Button>
-        {reread.isError && <ErrorBar error={reread.error} />}
-      </div>
+    <div className="grid gap-6 lg:grid-cols-[minmax(0,1fr)_22rem]">
       <SweepPreview entry={entry} />
+      {aside(ruleForm)}
     </div>
   );
 }

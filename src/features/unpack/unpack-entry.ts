@@ -1,6 +1,8 @@
 import type { Reading, ReadingOverrides } from '../../../shared/contracts/reading.js';
 import type { SweepConditions } from '../../../shared/contracts/sweep.js';
+import type { InputErrorCode } from '../../../shared/errors.js';
 import type { Finding } from '../../../shared/output.js';
+import { text } from '../../../shared/text.js';
 import type { ReadOutcome } from '../../workers/pool.js';
 
 export type EntryState =
@@ -62,10 +64,23 @@ const ASSUMED: Reading = {
   comments: [],
 };
 
+/** Refusals that another rule may cure; a web page or an archive stays one. */
+const CURABLE: readonly InputErrorCode[] = [
+  'no-numeric-data',
+  'too-few-columns',
+  'not-a-curve',
+  'too-few-points',
+  'single-frequency',
+  'negative-frequency',
+  'zero-impedance',
+  'bad-setting',
+];
+
 /** The rule to show and correct: as read, or as told, or a plain one where text could not be read at all. */
 export function ruleToShow({ outcome, reading, overrides }: Entry): Reading | undefined {
-  if (outcome && 'file' in outcome) return outcome.file.reading;
-  if (!outcome || outcome.lines.length === 0) return undefined;
+  if (!outcome) return undefined;
+  if ('file' in outcome) return outcome.file.reading;
+  if (outcome.lines.length === 0 || !CURABLE.includes(outcome.refused.code)) return undefined;
   return { ...(reading ?? ASSUMED), ...overrides };
 }
 
@@ -73,6 +88,16 @@ export function ruleToShow({ outcome, reading, overrides }: Entry): Reading | un
 export function openQuestions(reading: Reading, findings: readonly Finding[]): boolean {
   const isUnsettled = Object.values(reading.guesses).some((guess) => guess && !guess.settled && !guess.toldByPerson);
   return isUnsettled || findings.some(({ severity }) => severity !== 'info');
+}
+
+/** What to look at first, in a few words. */
+export function firstQuestion({ outcome }: Entry): string {
+  if (!outcome || 'refused' in outcome) return '';
+  const { reading, findings } = outcome.file;
+  const choices = Object.entries(reading.guesses).filter(([, guess]) => guess && !guess.settled && !guess.toldByPerson);
+  const choice = choices[0]?.[0] as keyof typeof reading.guesses | undefined;
+  if (choice !== undefined && choice !== 'format') return text.unpack.guessOf(text.unpack.rule[choice]);
+  return findings.find(({ severity }) => severity !== 'info')?.message ?? '';
 }
 
 export function stateAfterReading(outcome: ReadOutcome): EntryState {

@@ -34,6 +34,7 @@ export function UnpackFoot({ state, session, readOnlyReason, onStored }: UnpackF
   const failed = count('not-stored');
   const stored = count('stored');
   const storable = entries.filter(canBeStored).length;
+  const hindering = hindrance(entries, readOnlyReason);
   const store = async () => {
     setError(undefined);
     const batch = await session.storeAll();
@@ -48,9 +49,9 @@ export function UnpackFoot({ state, session, readOnlyReason, onStored }: UnpackF
       <p role="status" className="flex-1">
         {isStoring
           ? text.unpack.storedCount(stored, stored + storable + count('storing'))
-          : text.unpack.count(entries.length - reading, entries.length)}{' '}
+          : text.unpack.count(entries.length - reading - refused, entries.length)}{' '}
         {refused > 0 && text.unpack.notRead(refused, entries.length)}{' '}
-        {failed > 0 && text.unpack.notStored(failed, entries.length)}
+        {failed > 0 && text.unpack.notStored(failed, entries.length)} {!isStoring && storable > 0 && hindering}
       </p>
       {error !== undefined && <ErrorBar error={error} />}
       {refused > 0 && !isStoring && <Button onClick={removeRefused}>{text.unpack.removeRefused}</Button>}
@@ -60,12 +61,7 @@ export function UnpackFoot({ state, session, readOnlyReason, onStored }: UnpackF
       {stored > 0 && !isStoring && failed > 0 && (
         <Button onClick={() => onStored(session.batch())}>{text.unpack.goOn(stored)}</Button>
       )}
-      <Button
-        look="primary"
-        isBusy={isStoring}
-        reason={hindrance(entries, readOnlyReason)}
-        onClick={() => void store().catch(setError)}
-      >
+      <Button look="primary" isBusy={isStoring} reason={hindering} onClick={() => void store().catch(setError)}>
         {text.unpack.add(storable)}
       </Button>
     </div>

@@ -43,7 +43,10 @@ export function Unpack({ onAdded }: UnpackProps) {
       ) : (
         <>
           <div className="grid gap-6 md:grid-cols-[16rem_minmax(0,1fr)] xl:grid-cols-[18rem_minmax(0,1fr)_20rem]">
-            <section aria-label={text.unpack.filesTitle} className="flex flex-col gap-3">
+            <section
+              aria-label={text.unpack.filesTitle}
+              className="flex flex-col gap-3 md:sticky md:top-18 md:max-h-[calc(100dvh-10rem)] md:self-start"
+            >
               <FileList
                 {...{ entries, isStoring }}
                 chosenId={entry.id}
@@ -54,7 +57,10 @@ export function Unpack({ onAdded }: UnpackProps) {
                 <ChooseFiles label={text.unpack.chooseLabel} onFiles={addFiles} isQuiet />
               </div>
             </section>
-            <section aria-label={text.unpack.previewTitle} className="min-w-0">
+            <section
+              aria-label={text.unpack.previewTitle}
+              className="min-w-0 xl:sticky xl:top-18 xl:max-h-[calc(100dvh-10rem)] xl:self-start xl:overflow-y-auto"
+            >
               <h2 className="mb-3 text-title break-all">{entry.file.name}</h2>
               <SweepPreview entry={entry} />
             </section>
