@@ -154,11 +154,18 @@ function kernel(coil, suspension) {
   const arrays = [...new Set(['frequencyHz', 'period', ...coil.arrays, ...suspension.arrays])];
   const pairs = columns.flatMap((_, k) => columns.slice(0, k + 1).map((__, l) => [k, l]));
   const factor = (/** @type {number} */ k) => columns[k]?.factor ?? '1';
-  const times = (/** @type {number[]} */ ks) => ks.map(factor).filter((f) => f !== '1').map((f) => ` * ${f}`).join('');
+  const times = (/** @type {number[]} */ ks) =>
+    ks
+      .map(factor)
+      .filter((f) => f !== '1')
+      .map((f) => ` * ${f}`)
+      .join('');
   const chunk = (/** @type {string[]} */ items, size = 10) =>
     Array.from({ length: Math.ceil(items.length / size) }, (_, i) => items.slice(i * size, (i + 1) * size).join(', '));
   const springRe = suspension.spring[0] === '0' ? 'iQms' : `iQms + ${suspension.spring[0]}`;
-  const springIm = suspension.spring[1].startsWith('-') ? `x ${suspension.spring[1].replace('-', '- ')}` : `x + ${suspension.spring[1]}`;
+  const springIm = suspension.spring[1].startsWith('-')
+    ? `x ${suspension.spring[1].replace('-', '- ')}`
+    : `x + ${suspension.spring[1]}`;
   return `
 export function ${coil.name}${suspension.name}(v: ArrayLike<number>, data: KernelData, weights: Float64Array, loss: Loss, out: NormalSums): void {
   const { ${arrays.join(', ')} } = data.grid, zRe = data.re, zIm = data.im, n = weights.length;
@@ -166,8 +173,12 @@ export function ${coil.name}${suspension.name}(v: ArrayLike<number>, data: Kerne
   const isLinear = loss.kind === 'linear', c2 = loss.scale * loss.scale, iC2 = 1 / c2;
 ${[...coil.constants, ...suspension.constants].map((line) => `  ${line}`).join('\n')}
   let cost = 0;
-${chunk(order.map((k) => `g${k} = 0`)).map((line) => `  let ${line};`).join('\n')}
-${chunk(pairs.map(([k, l]) => `h${k}_${l} = 0`)).map((line) => `  let ${line};`).join('\n')}
+${chunk(order.map((k) => `g${k} = 0`))
+  .map((line) => `  let ${line};`)
+  .join('\n')}
+${chunk(pairs.map(([k, l]) => `h${k}_${l} = 0`))
+  .map((line) => `  let ${line};`)
+  .join('\n')}
   for (let i = 0; i < n; i++) {
     const weight = weights[i]!;
     if (weight === 0) continue;
@@ -197,13 +208,33 @@ ${[...suspension.perPoint, ...coil.perPoint].map((line) => `    ${line}`).join('
     const qr = ur * root, qi = ui * root, wr = rr * root, wi = ri * root;
     const m2r = (mr * mr - mi * mi) * iAmp, m2i = 2 * mr * mi * iAmp, tr = m2r * qr - m2i * qi, ti = m2r * qi + m2i * qr;
 ${order.map((k) => `    const a${k}r = ${columns[k]?.re}, a${k}i = ${columns[k]?.im};`).join('\n')}
-${chunk(order.map((k) => `g${k} -= a${k}r * wr + a${k}i * wi`), 3).map((line) => `    ${line.replaceAll(', ', '; ')};`).join('\n')}
-${chunk(pairs.map(([k, l]) => `h${k}_${l} += a${k}r * a${l}r + a${k}i * a${l}i`), 3).map((line) => `    ${line.replaceAll(', ', '; ')};`).join('\n')}
+${chunk(
+  order.map((k) => `g${k} -= a${k}r * wr + a${k}i * wi`),
+  3,
+)
+  .map((line) => `    ${line.replaceAll(', ', '; ')};`)
+  .join('\n')}
+${chunk(
+  pairs.map(([k, l]) => `h${k}_${l} += a${k}r * a${l}r + a${k}i * a${l}i`),
+  3,
+)
+  .map((line) => `    ${line.replaceAll(', ', '; ')};`)
+  .join('\n')}
   }
   out.cost = 0.5 * cost;
   const g = out.gradient, h = out.hessian;
-${chunk(order.map((k) => `g[${k}] = g${k}${times([k])}`), 5).map((line) => `  ${line.replaceAll(', ', '; ')};`).join('\n')}
-${chunk(pairs.map(([k = 0, l = 0]) => `h[${k * p + l}] = h${k}_${l}${times([k, l])}`), 5).map((line) => `  ${line.replaceAll(', ', '; ')};`).join('\n')}
+${chunk(
+  order.map((k) => `g[${k}] = g${k}${times([k])}`),
+  5,
+)
+  .map((line) => `  ${line.replaceAll(', ', '; ')};`)
+  .join('\n')}
+${chunk(
+  pairs.map(([k = 0, l = 0]) => `h[${k * p + l}] = h${k}_${l}${times([k, l])}`),
+  5,
+)
+  .map((line) => `  ${line.replaceAll(', ', '; ')};`)
+  .join('\n')}
 }
 `;
 }

@@ -18,6 +18,20 @@ export function requireNode() {
 }
 
 /**
+ * Says so when the checkout is not this user's to write in.
+ * @param {string} root
+ */
+export function requireOwnFolder(root) {
+  try {
+    accessSync(root, constants.W_OK);
+  } catch {
+    throw new SetupError(
+      `${root} belongs to another user, so nothing can be installed in it. Run this as that user, or from a clone of your own.`,
+    );
+  }
+}
+
+/**
  * One set-up at a time in a checkout: a second start or test waits for the first to finish installing and building.
  * @template T
  * @param {string} root

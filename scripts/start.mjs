@@ -11,7 +11,7 @@ import { ensureCluster, keepRunning, stopCluster } from './postgres.mjs';
 import { bindable, SetupError } from './processes.mjs';
 import { noteRunning, runningHere } from './running.mjs';
 import { startServer } from './server-process.mjs';
-import { build, endSetupChildren, installPackages, inTurn, requireNode } from './setup.mjs';
+import { build, endSetupChildren, installPackages, inTurn, requireNode, requireOwnFolder } from './setup.mjs';
 
 const FIRST_PORT = 4680;
 const root = dirname(dirname(fileURLToPath(import.meta.url)));
@@ -35,6 +35,7 @@ function goOn() {
 
 async function main() {
   requireNode();
+  requireOwnFolder(root);
   openFolder(join(root, '.data'));
   const other = await inTurn(root, say, setUp);
   if (other) {

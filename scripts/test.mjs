@@ -5,7 +5,7 @@
 import { dirname } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { SetupError } from './processes.mjs';
-import { endSetupChildren, installPackages, inTurn, requireNode } from './setup.mjs';
+import { endSetupChildren, installPackages, inTurn, requireNode, requireOwnFolder } from './setup.mjs';
 import { reportsFolder, stages } from './test-stages.mjs';
 
 const root = dirname(dirname(fileURLToPath(import.meta.url)));
@@ -38,6 +38,7 @@ async function main() {
     );
   }
   requireNode();
+  requireOwnFolder(root);
   await inTurn(root, say, () => installPackages(root, say));
   const context = { root, reports: reportsFolder(root), passedOn, say, open };
   const results = [];
