@@ -48,6 +48,8 @@ export const common = {
   signIn: 'Sign in',
   makeAccount: 'Make an account',
   optional: 'optional',
+  severity: { info: 'Note', caution: 'Caution', fault: 'Fault' },
+  atFrequency: (frequency: string) => `at ${frequency}`,
   atLeast: (bound: string) => `This has to be ${bound} or more.`,
   atMost: (bound: string) => `This has to be ${bound} or less.`,
   wholeNumber: 'This has to be a whole number.',

@@ -149,8 +149,6 @@ export const sheet = {
     fewerFigures: 'The main figures',
     findings: 'Findings',
     noFindings: 'Nothing to note.',
-    severity: { info: 'Note', caution: 'Caution', fault: 'Fault' },
-    at: (frequency: string) => `at ${frequency}`,
     misfit: 'Misfit',
     misfitSentence: (percent: string) => `The model differs from the sweep by ${percent} on average.`,
     model: (name: string) => `Model: ${name}.`,

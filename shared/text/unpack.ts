@@ -168,5 +168,4 @@ export const unpack = {
   },
   chartAlt: 'Preview of the sweep',
   remarks: 'Checks on arrival',
-  severity: { info: 'Note', caution: 'Caution', fault: 'Fault' },
 } as const;

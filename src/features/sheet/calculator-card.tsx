@@ -4,6 +4,7 @@ import type { Card } from '../../../shared/contracts/sheet.js';
 import { text } from '../../../shared/text.js';
 import { Button } from '../../components/button.js';
 import { ErrorBar } from '../../components/error-bar.js';
+import { Findings } from '../../components/findings.js';
 import { Menu } from '../../components/menu.js';
 import { StatusWord } from '../../components/status-word.js';
 import { shortDate } from '../../lib/dates.js';
@@ -11,7 +12,6 @@ import { CardDetails } from './card-details.js';
 import { CardInputsForm } from './card-inputs-form.js';
 import { CardSettings } from './card-settings.js';
 import { FiguresTable } from './figures-table.js';
-import { FindingsList } from './findings-list.js';
 import { Fold } from './fold.js';
 import { RunProgressLine } from './run-progress-line.js';
 import { useSheetScene } from './sheet-context.js';
@@ -69,7 +69,11 @@ export function CalculatorCard({ card, definition }: { card: Card; definition: C
       )}
       {output && (
         <Fold title={words.findings} isOpenAtFirst>
-          <FindingsList findings={output.findings} onFrequency={setCursorA} />
+          {output.findings.length === 0 ? (
+            <p className="text-soft">{words.noFindings}</p>
+          ) : (
+            <Findings findings={output.findings} onFrequency={setCursorA} />
+          )}
         </Fold>
       )}
       <Fold title={words.inputs} isOpenAtFirst={!cardState.isComplete}>

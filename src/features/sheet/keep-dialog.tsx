@@ -79,12 +79,7 @@ export function KeepDialog({ me, onClose, onKept }: KeepDialogProps) {
         />
         {reason && <p className="text-old">{reason}</p>}
         {progress && (
-          <progress
-            className="h-2 w-full accent-heather"
-            value={progress.done}
-            max={progress.total}
-            aria-label={words.moving}
-          />
+          <progress className="w-full" value={progress.done} max={progress.total} aria-label={words.moving} />
         )}
         {error !== undefined && <ErrorBar error={error} />}
       </div>

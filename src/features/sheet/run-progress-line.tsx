@@ -16,12 +16,7 @@ export function RunProgressLine({ progress, onStop }: { progress: RunProgress; o
   const { done, total, label } = progress;
   return (
     <div className="flex items-center gap-3" role="status">
-      <progress
-        className="h-2 min-w-0 flex-1 accent-heather"
-        value={done}
-        max={total}
-        aria-label={text.sheet.results.running}
-      />
+      <progress className="min-w-0 flex-1" value={done} max={total} aria-label={text.sheet.results.running} />
       <span className="font-num text-note">
         {text.sheet.results.progress(done, total)} {label}
       </span>

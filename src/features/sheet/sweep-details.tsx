@@ -2,11 +2,11 @@ import { Download } from 'lucide-react';
 import { SWEEP_ROLES, type SweepConditions, type SweepRole, type SweepRow } from '../../../shared/contracts/sweep.js';
 import { text } from '../../../shared/text.js';
 import { Button } from '../../components/button.js';
+import { Findings } from '../../components/findings.js';
 import { Select } from '../../components/select.js';
 import { useProjectStore } from '../../lib/project-store/store-context.js';
 import { useUpdateRow } from '../../lib/project-store/store-mutations.js';
 import { BoundedNumberField } from './bounded-number-field.js';
-import { FindingsList } from './findings-list.js';
 import { PistonDrawing } from './piston-drawing.js';
 import { useSheetScene } from './sheet-context.js';
 
@@ -68,7 +68,7 @@ export function SweepDetails({ sweep }: { sweep: SweepRow }) {
       {revision.findings.length > 0 && (
         <div>
           <h4 className="mb-1 text-note font-semibold">{words.findings}</h4>
-          <FindingsList findings={revision.findings} />
+          <Findings findings={revision.findings} />
         </div>
       )}
       <dl className="grid grid-cols-[auto_1fr] gap-x-3 gap-y-1 text-note">

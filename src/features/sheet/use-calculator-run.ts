@@ -102,7 +102,7 @@ export function useCalculatorRun({ definition, parts, inputs, points, isAutomati
 
   useEffect(() => () => job.current?.stop(), []);
   const stop = useCallback(() => job.current?.stop(), []);
-  return { state, run, stop, isReady, isComplete };
+  return { state, run, stop };
 }
 
 export function outputOf(state: RunState): Output | undefined {

@@ -39,8 +39,9 @@ export function useCard(card: Card, definition: CalculatorDefinition) {
     reasons,
     output,
     run: run.state,
-    isReady: run.isReady,
-    isComplete: run.isComplete,
+    isComplete: Object.entries(definition.roles).every(
+      ([role, { least }]) => (card.inputs[role]?.length ?? 0) >= least,
+    ),
     stop: run.stop,
     /** Computes anew what the card asks now. A kept result stays where it was; the card lets go of it. */
     runAgain: () => {
