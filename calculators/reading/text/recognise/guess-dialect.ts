@@ -106,14 +106,14 @@ function tally(text: Characters, lines: readonly Line[], dialect: Dialect): Dial
 
 const numbersIn = (key: string) => key.split('n').length - 1;
 const columnsOf = (guess: DialectGuess) => guess.shape.isNumber.filter(Boolean).length;
-const emptiesOf = (guess: DialectGuess) => guess.rows[0]?.filter((field) => field.kind === 'empty').length ?? 0;
+const wordsOf = (guess: DialectGuess) => guess.shape.fields - columnsOf(guess); // empty fields too
 
-/** Two or more columns first; then more agreeing lines, fewer empty columns, a steadier first column; then the order tried. */
+/** Two or more columns first; then more agreeing lines, fewer columns of words or nothing, a steadier column; then the order tried. */
 function better(a: DialectGuess, b: DialectGuess): number {
   return (
     Number(columnsOf(b) >= 2) - Number(columnsOf(a) >= 2) ||
     b.agreeing - a.agreeing ||
-    emptiesOf(a) - emptiesOf(b) ||
+    wordsOf(a) - wordsOf(b) ||
     reversals(a) - reversals(b)
   );
 }

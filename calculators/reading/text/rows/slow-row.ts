@@ -93,9 +93,9 @@ function take(
 
 /** value × 10^exponent, rounded once: the digits of the value with another exponent. */
 function shifted(value: number, exponent: number): number {
-  if (exponent === 0) return value;
-  const digits = String(value);
-  return digits.includes('e') ? value * 10 ** exponent : Number(`${digits}e${exponent}`);
+  if (exponent === 0 || value === 0) return value; // −0 stays −0
+  const [digits = '', own = '0'] = String(value).split('e');
+  return Number(`${digits}e${Number(own) + exponent}`);
 }
 
 function startsTable(text: Characters, plan: ScanPlan, at: LineAt): boolean {
