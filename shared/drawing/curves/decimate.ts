@@ -29,10 +29,56 @@ export function decimatedPath(
     }
     writer.add(sx * x[i]! + ox, Math.max(top, Math.min(bottom, yPx)));
   }
-  return writer.done();
+  return straightened(writer.done());
+}
+
+/**
+ * Leaves out points that a straight line passes within TOLERANCE_PX of: a smooth curve then takes a tenth of the
+ * strokes. One pass: from the last kept point on, the slopes that pass near every point so far form a sleeve; a point
+ * outside it ends the line. x ascends between two NaN pairs.
+ */
+function straightened(points: Float64Array): Float64Array {
+  const out = scratch('straight', points.length);
+  let size = 0;
+  const keep = (i: number) => {
+    out[size] = points[i]!;
+    out[size + 1] = points[i + 1]!;
+    size += 2;
+  };
+  let [fromX, fromY] = [Number.NaN, Number.NaN];
+  let [least, most] = [Number.NEGATIVE_INFINITY, Number.POSITIVE_INFINITY];
+  const startAt = (i: number) => {
+    keep(i);
+    fromX = points[i]!;
+    fromY = points[i + 1]!;
+    least = Number.NEGATIVE_INFINITY;
+    most = Number.POSITIVE_INFINITY;
+  };
+  let pending = -1;
+  for (let i = 0; i < points.length; i += 2) {
+    const y = points[i + 1]!;
+    if (Number.isNaN(y) || Number.isNaN(fromY)) {
+      if (pending >= 0) keep(pending);
+      pending = -1;
+      startAt(i);
+      continue;
+    }
+    let slope = (y - fromY) / (points[i]! - fromX);
+    if (pending >= 0 && !(slope >= least && slope <= most)) {
+      startAt(pending);
+      slope = (y - fromY) / (points[i]! - fromX);
+    }
+    const reach = TOLERANCE_PX / (points[i]! - fromX);
+    least = Math.max(least, slope - reach);
+    most = Math.min(most, slope + reach);
+    pending = i;
+  }
+  if (pending >= 0) keep(pending);
+  return out.slice(0, size);
 }
 
 const FAR_PX = 4000; // far outside is as good as at infinity, and painters stay exact
+const TOLERANCE_PX = 0.1;
 const FLAT_PX = 0.25; // a column lower than this is one point
 
 /** Indices [from, to) of the points in view and one more on each side, so that lines run to the edge. */
@@ -43,8 +89,15 @@ export function visiblePoints(x: Float64Array, scale: AxisScale): [number, numbe
   return [from, to];
 }
 
+const scratches = { columns: new Float64Array(0), straight: new Float64Array(0) };
+/** Room to work in, kept from call to call: making and freeing it for every line of every frame costs more than the work. */
+function scratch(name: keyof typeof scratches, length: number): Float64Array {
+  if (scratches[name].length < length) scratches[name] = new Float64Array(length * 2);
+  return scratches[name];
+}
+
 class ColumnWriter {
-  private out: Float64Array;
+  private readonly out: Float64Array;
   private size = 0;
   private column = Number.NaN;
   private lowX = 0;
@@ -53,7 +106,7 @@ class ColumnWriter {
   private highY = 0;
 
   constructor(most: number) {
-    this.out = new Float64Array(Math.max(8, most * 2 + 4));
+    this.out = scratch('columns', most * 2 + 4);
   }
   add(xPx: number, yPx: number): void {
     const column = Math.floor(xPx);
@@ -79,7 +132,7 @@ class ColumnWriter {
   }
   done(): Float64Array {
     this.flush();
-    return this.out.slice(0, this.size);
+    return this.out.subarray(0, this.size);
   }
   private flush(): void {
     if (Number.isNaN(this.column)) return;

@@ -13,6 +13,7 @@ const DIMMED = 0.35;
 const RAMP_DIMMED = 0.45;
 const BAND_OPACITY = { limits: 0.12, uncertainty: 0.16 } as const;
 const MARKER_PX = 7;
+const HAIRLINE = 1; // px: painters draw it several times faster than a wider line, and forty lines need it
 
 export function drawCurves(input: ChartInput, layout: ChartLayout): Primitive[] {
   return layout.strips.map((strip): Primitive => {
@@ -42,7 +43,7 @@ export function sweepStroke(input: ChartInput, sweep: ChartSweep): Stroke {
   if (isRamp(input)) {
     const drawn = drawnSweeps(input);
     const color = rampColor(input.theme, drawn.indexOf(sweep) / Math.max(1, drawn.length - 1));
-    return isActive ? { color, width: 2.25 } : { color, width: 1.25, opacity: RAMP_DIMMED };
+    return isActive ? { color, width: 2.25 } : { color, width: HAIRLINE, opacity: RAMP_DIMMED };
   }
   const style = lineStyle(sweep.lineNumber);
   const color = lineColor(input.theme, sweep.lineNumber);

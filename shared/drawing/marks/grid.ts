@@ -2,8 +2,10 @@ import { chart } from '../../text/chart.js';
 import type { ChartInput } from '../chart-input.js';
 import { type ChartLayout, NEAT_GAP, type Strip } from '../layout.js';
 import type { ChartTheme } from '../palette.js';
-import type { LinePrimitive, Primitive, TextPrimitive } from '../primitives.js';
+import type { Primitive, TextPrimitive } from '../primitives.js';
 import { type Tick, ticksOf } from '../scales/ticks.js';
+import { textWidthPx } from '../text-width.js';
+import { crisp, JoinedLines } from './joined-lines.js';
 
 /** The grid under the curves, and the neat line around them with its ticks, numbers and titles. */
 export interface ChartTicks {
@@ -13,7 +15,11 @@ export interface ChartTicks {
 export function ticksOfChart(layout: ChartLayout, locale?: string): ChartTicks {
   const { tick } = layout.sizes;
   return {
-    frequency: ticksOf(layout.frequency, { labelGapPx: tick * 3.3, ...(locale ? { locale } : {}) }),
+    frequency: ticksOf(layout.frequency, {
+      labelGapPx: tick * 3.3,
+      labelWidthPx: (label) => textWidthPx(label, 'num', tick),
+      ...(locale ? { locale } : {}),
+    }),
     strips: layout.strips.map((strip) =>
       ticksOf(strip.scale, {
         labelGapPx: tick * (strip.quantity === 'phase' ? 2.1 : 2.4),
@@ -24,72 +30,75 @@ export function ticksOfChart(layout: ChartLayout, locale?: string): ChartTicks {
   };
 }
 
-const crisp = (px: number): number => Math.round(px) + 0.5;
-const line = (x1: number, y1: number, x2: number, y2: number, color: string, width = 1): LinePrimitive => ({
-  kind: 'line',
-  x1,
-  y1,
-  x2,
-  y2,
-  stroke: { color, width },
-});
-
 export function drawGrid(layout: ChartLayout, ticks: ChartTicks, theme: ChartTheme): Primitive[] {
-  const items: Primitive[] = [];
+  const [light, strong, zero] = [new JoinedLines(), new JoinedLines(), new JoinedLines()];
   layout.strips.forEach((strip, i) => {
     const { x, y, width, height } = strip.rect;
-    const across = (tick: Tick) =>
-      line(x, crisp(tick.px), x + width, crisp(tick.px), tick.label ? theme.gridStrong : theme.grid);
-    const along = (tick: Tick) =>
-      line(crisp(tick.px), y, crisp(tick.px), y + height, tick.label ? theme.gridStrong : theme.grid);
-    const own = ticks.strips[i] ?? [];
-    for (const strong of [false, true]) {
-      items.push(...own.filter((t) => (t.label !== '') === strong).map(across));
-      items.push(...ticks.frequency.filter((t) => (t.label !== '') === strong).map(along));
+    const grid = (tick: Tick) => (tick.label ? strong : light);
+    const color = (tick: Tick) => (tick.label ? theme.gridStrong : theme.grid);
+    for (const tick of ticks.strips[i] ?? []) {
+      grid(tick).add(x, crisp(tick.px), x + width, crisp(tick.px), color(tick));
+    }
+    for (const tick of ticks.frequency) {
+      grid(tick).add(crisp(tick.px), y, crisp(tick.px), y + height, color(tick));
     }
     if (strip.quantity !== 'magnitude' && strip.scale.min < 0 && strip.scale.max > 0) {
-      items.push(line(x, crisp(strip.scale.offset), x + width, crisp(strip.scale.offset), theme.edge));
+      zero.add(x, crisp(strip.scale.offset), x + width, crisp(strip.scale.offset), theme.edge);
     }
   });
-  return items;
+  return [...light.paths(), ...strong.paths(), ...zero.paths()];
 }
 
 export function drawFrame(input: ChartInput, layout: ChartLayout, ticks: ChartTicks): Primitive[] {
   const { theme } = input;
-  const { frame } = layout;
+  const { frame, strips } = layout;
   const outer = {
     x: crisp(frame.x - NEAT_GAP),
     y: crisp(frame.y - NEAT_GAP),
     width: frame.width + NEAT_GAP * 2,
     height: frame.height + NEAT_GAP * 2,
   };
-  const items: Primitive[] = [{ kind: 'rect', ...outer, stroke: { color: theme.line, width: 1 } }];
-  layout.strips.forEach((strip, i) => {
-    const { x, y, width, height } = strip.rect;
-    items.push({
-      kind: 'rect',
-      x: crisp(x),
-      y: crisp(y),
-      width,
-      height,
-      stroke: { color: theme.ink, width: 1.25 },
-    });
-    items.push(...valueAxis(strip, ticks.strips[i] ?? [], layout, theme));
+  const marks = new JoinedLines();
+  const words: Primitive[] = [];
+  strips.forEach((strip, i) => {
+    words.push(...valueAxis(strip, ticks.strips[i] ?? [], layout, theme, marks));
   });
-  items.push(...frequencyAxis(layout, ticks.frequency, theme), ...phaseNotes(input, layout));
-  return items;
+  words.push(...frequencyAxis(layout, ticks.frequency, theme, marks), ...phaseNotes(input, layout));
+  return [
+    { kind: 'rect', ...outer, stroke: { color: theme.line, width: 1 } },
+    ...marks.paths(),
+    ...strips.map(
+      ({ rect: { x, y, width, height } }): Primitive => ({
+        kind: 'rect',
+        x: crisp(x),
+        y: crisp(y),
+        width,
+        height,
+        stroke: { color: theme.ink, width: 1.25 },
+      }),
+    ),
+    ...words,
+  ];
 }
+const tickColor = (tick: Tick, theme: ChartTheme): string => (tick.label ? theme.ink : theme.edge);
+const tickLength = (tick: Tick): number => (tick.label ? NEAT_GAP : NEAT_GAP / 2);
 
-function valueAxis(strip: Strip, ticks: readonly Tick[], layout: ChartLayout, theme: ChartTheme): Primitive[] {
+function valueAxis(
+  strip: Strip,
+  ticks: readonly Tick[],
+  layout: ChartLayout,
+  theme: ChartTheme,
+  marks: JoinedLines,
+): Primitive[] {
   const { x, y, width, height } = strip.rect;
   const { tick: size, note } = layout.sizes;
   const items: Primitive[] = [];
   const [left, right] = [crisp(x), crisp(x + width)];
   for (const tick of ticks) {
     const py = crisp(tick.px);
-    const length = tick.label ? NEAT_GAP : NEAT_GAP / 2;
-    const color = tick.label ? theme.ink : theme.edge;
-    items.push(line(left - length, py, left, py, color), line(right, py, right + length, py, color));
+    const [length, color] = [tickLength(tick), tickColor(tick, theme)];
+    marks.add(left - length, py, left, py, color);
+    marks.add(right, py, right + length, py, color);
     if (tick.label === '') continue;
     const baseline = Math.min(y + height + size * 0.3, Math.max(y + size * 0.4, tick.px + size * 0.36));
     items.push(number(tick.label, x - NEAT_GAP - 6, baseline, 'end', size, theme.soft));
@@ -109,20 +118,23 @@ function valueAxis(strip: Strip, ticks: readonly Tick[], layout: ChartLayout, th
   return items;
 }
 
-function frequencyAxis(layout: ChartLayout, ticks: readonly Tick[], theme: ChartTheme): Primitive[] {
+function frequencyAxis(
+  layout: ChartLayout,
+  ticks: readonly Tick[],
+  theme: ChartTheme,
+  marks: JoinedLines,
+): Primitive[] {
   const { frame, sizes, strips } = layout;
   const bottom = frame.y + frame.height;
+  const seams = strips.slice(0, -1).map(({ rect }) => rect.y + rect.height);
   const items: Primitive[] = [];
   for (const tick of ticks) {
     const px = crisp(tick.px);
-    const length = tick.label ? NEAT_GAP : NEAT_GAP / 2;
-    const color = tick.label ? theme.ink : theme.edge;
-    items.push(line(px, crisp(bottom), px, crisp(bottom) + length, color));
-    items.push(line(px, crisp(frame.y) - length, px, crisp(frame.y), color));
-    const seam = strips[0] ? strips[0].rect.y + strips[0].rect.height : bottom;
-    if (strips.length > 1) items.push(line(px, crisp(seam), px, crisp(seam) + length, color));
-    if (tick.label)
-      items.push(number(tick.label, tick.px, bottom + NEAT_GAP + sizes.tick + 5, 'middle', sizes.tick, theme.soft));
+    const [length, color] = [tickLength(tick), tickColor(tick, theme)];
+    marks.add(px, crisp(frame.y) - length, px, crisp(frame.y), color);
+    for (const y of [...seams, bottom]) marks.add(px, crisp(y), px, crisp(y) + length, color);
+    const y = bottom + NEAT_GAP + sizes.tick + 5;
+    if (tick.label) items.push(number(tick.label, tick.px, y, 'middle', sizes.tick, theme.soft));
   }
   items.push({
     kind: 'text',

@@ -12,12 +12,13 @@ const ROUNDING = 1e-9; // a tick on the very edge of an axis belongs to it
 
 export interface TickOptions {
   readonly labelGapPx: number; // least distance between two labelled ticks
+  readonly labelWidthPx?: (label: string) => number; // of labels side by side: then the widths decide
   readonly isAngle?: boolean; // steps of 15, 30, 45, 90 rather than 10, 20, 50
   readonly locale?: string;
 }
 
 export function ticksOf(scale: AxisScale, options: TickOptions): Tick[] {
-  const plan = scale.kind === 'log' ? logPlan(scale, options.labelGapPx) : null;
+  const plan = scale.kind === 'log' ? logPlan(scale, options) : null;
   const { labelled, light } = plan ?? linearPlan(scale, options);
   const decimals = decimalsFor(labelled);
   const make = (value: number, label: string): Tick => ({ value, px: pixelOf(scale, value), label });
@@ -31,7 +32,8 @@ interface TickPlan {
 }
 
 /** Decades in 1-2-5; null where fewer than four of any kind of whole multiples are in view. */
-function logPlan(scale: AxisScale, gapPx: number): TickPlan | null {
+function logPlan(scale: AxisScale, options: TickOptions): TickPlan | null {
+  const gapPx = options.labelGapPx;
   const pxPerDecade = Math.abs(scale.slope) * Math.LN10;
   const multiples: number[] = [];
   const first = Math.floor(Math.log10(scale.min));
@@ -47,8 +49,21 @@ function logPlan(scale: AxisScale, gapPx: number): TickPlan | null {
     const spaced = spacedOut(scale, seen, gapPx, oneTwoFive);
     return { labelled: spaced, light: seen.filter((v) => !spaced.includes(v)) };
   }
-  const labelled = pxPerDecade * Math.log10(2) >= gapPx ? oneTwoFive : decadesOnly(seen, pxPerDecade, gapPx);
+  const labelled = keepApart(scale, oneTwoFive, options) ? oneTwoFive : decadesOnly(seen, pxPerDecade, gapPx);
   return { labelled, light: pxPerDecade > 30 ? seen.filter((v) => !labelled.includes(v)) : [] };
+}
+
+const WORD_GAP_PX = 5;
+/** Whether the labels of these values stand clear of each other. */
+function keepApart(scale: AxisScale, values: readonly number[], options: TickOptions): boolean {
+  const { labelWidthPx, labelGapPx, locale } = options;
+  const decimals = decimalsFor(values);
+  const width = (value: number) => labelWidthPx?.(tickLabel(value, decimals, locale)) ?? 0;
+  return values.slice(1).every((value, i) => {
+    const before = values[i] ?? value;
+    const needed = labelWidthPx ? (width(before) + width(value)) / 2 + WORD_GAP_PX : labelGapPx;
+    return Math.abs(pixelOf(scale, value) - pixelOf(scale, before)) >= needed;
+  });
 }
 
 function decadesOnly(seen: readonly number[], pxPerDecade: number, gapPx: number): number[] {
