@@ -13,6 +13,20 @@ export class SetupError extends Error {
 }
 
 /**
+ * What a person is told of an error: one sentence where one is known, otherwise all there is.
+ * @param {unknown} error
+ */
+export function inWords(error) {
+  if (error instanceof SetupError) return error.message;
+  const { code, path, stack } = /** @type {NodeJS.ErrnoException} */ (error);
+  if (code === 'EACCES' || code === 'EPERM')
+    return `${path} belongs to another user. Run this as that user, or remove it.`;
+  if (code === 'EROFS') return `${path} cannot be written: its file system is read-only.`;
+  if (code === 'ENOSPC') return 'The disk is full. Make room, then try again.';
+  return stack ?? String(error);
+}
+
+/**
  * When a process began, in clock ticks since boot; undefined when there is none (a zombie counts as none).
  * A process id alone does not name a process: ids are given out again. Id and beginning together do.
  * @param {number} pid

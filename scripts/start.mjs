@@ -8,7 +8,7 @@ import { fileURLToPath } from 'node:url';
 import { openFolder } from './cluster-home.mjs';
 import { startDevelopment } from './dev.mjs';
 import { ensureCluster, keepRunning, stopCluster } from './postgres.mjs';
-import { bindable, SetupError } from './processes.mjs';
+import { bindable, inWords, SetupError } from './processes.mjs';
 import { noteRunning, runningHere } from './running.mjs';
 import { startServer } from './server-process.mjs';
 import { build, endSetupChildren, installPackages, inTurn, requireNode, requireOwnFolder } from './setup.mjs';
@@ -139,7 +139,7 @@ function stopAll() {
 /** @param {unknown} error */
 async function fail(error) {
   const isAsked = isEnding; // what a signal cuts short is no fault
-  if (!isAsked) console.error(error instanceof SetupError ? error.message : error);
+  if (!isAsked) console.error(inWords(error));
   await stopAll();
   process.exit(isAsked ? 0 : 1);
 }

@@ -4,7 +4,7 @@
  */
 import { dirname } from 'node:path';
 import { fileURLToPath } from 'node:url';
-import { SetupError } from './processes.mjs';
+import { inWords, SetupError } from './processes.mjs';
 import { endSetupChildren, installPackages, inTurn, requireNode, requireOwnFolder } from './setup.mjs';
 import { reportsFolder, stages } from './test-stages.mjs';
 
@@ -47,7 +47,7 @@ async function main() {
     say(`\n── ${stage.title} ${'─'.repeat(Math.max(0, 72 - stage.title.length))}`);
     const begin = performance.now();
     const counts = await stage.run(context).catch((error) => {
-      say(error instanceof SetupError ? error.message : error.stack);
+      say(inWords(error));
       return { passed: 0, failed: 1 };
     });
     results.push({ title: stage.title, seconds: (performance.now() - begin) / 1000, ...counts });
@@ -69,7 +69,7 @@ function report(results) {
 }
 
 await main().catch((error) => {
-  console.error(error instanceof SetupError ? error.message : error);
+  console.error(inWords(error));
   say('\n0 passed, 1 failed');
   process.exitCode = 1;
 });
