@@ -1,16 +1,14 @@
 import { useQuery } from '@tanstack/react-query';
 import { useParams } from 'react-router-dom';
-import { text } from '../../shared/text.js';
-import { Dialog } from '../components/dialog.js';
 import { ErrorBar } from '../components/error-bar.js';
 import { Loading } from '../components/loading.js';
 import { PageFrame } from '../components/page-frame.js';
 import { ProjectScope, type Scope } from '../components/project-scope.js';
 import { SheetName } from '../features/sheet/sheet-name.js';
 import { SheetWorkspace } from '../features/sheet/sheet-workspace.js';
-import { Unpack } from '../features/unpack/unpack.js';
 import { useProjectStore } from '../lib/project-store/store-context.js';
 import { sheetQuery } from '../lib/project-store/store-queries.js';
+import { sheetSlots } from './sheet-slots.js';
 
 export function Component() {
   return <ProjectScope>{(scope) => <SheetPage {...scope} />}</ProjectScope>;
@@ -32,11 +30,7 @@ function SheetPage({ project }: Scope) {
       key={sheet.id}
       sheet={sheet}
       opensUnpack={false}
-      unpack={({ onAdded, onClose }) => (
-        <Dialog title={text.unpack.title} onClose={onClose} isFull>
-          <Unpack onAdded={({ sweeps }) => onAdded(sweeps.map(({ id }) => id))} />
-        </Dialog>
-      )}
+      slots={sheetSlots}
       frame={(bar, panes) => (
         <PageFrame
           title={sheet.name}

@@ -3,7 +3,6 @@ import { useEffect, useState } from 'react';
 import { useNavigate, useSearchParams } from 'react-router-dom';
 import { text } from '../../shared/text.js';
 import { Button, ButtonLink } from '../components/button.js';
-import { Dialog } from '../components/dialog.js';
 import { ErrorBar } from '../components/error-bar.js';
 import { Loading } from '../components/loading.js';
 import { PageFrame } from '../components/page-frame.js';
@@ -11,13 +10,13 @@ import { KeepDialog } from '../features/sheet/keep-dialog.js';
 import { SheetName } from '../features/sheet/sheet-name.js';
 import { SheetWorkspace } from '../features/sheet/sheet-workspace.js';
 import { openTrySheet } from '../features/sheet/try-sheet.js';
-import { Unpack } from '../features/unpack/unpack.js';
 import { hasHandedFiles } from '../lib/handed-files.js';
 import { useMe } from '../lib/me.js';
 import { browserStore } from '../lib/project-store/browser-store.js';
 import { ProjectStoreProvider } from '../lib/project-store/store-context.js';
 import { sheetQuery } from '../lib/project-store/store-queries.js';
 import { useSessionState } from '../lib/session.js';
+import { sheetSlots } from './sheet-slots.js';
 
 /** A full sheet that lives only in this browser, and says so. */
 export function Component() {
@@ -52,11 +51,7 @@ function TryPage() {
       key={row.id}
       sheet={row}
       opensUnpack={hasHandedFiles()}
-      unpack={({ onAdded, onClose }) => (
-        <Dialog title={text.unpack.title} onClose={onClose} isFull>
-          <Unpack onAdded={({ sweeps }) => onAdded(sweeps.map(({ id }) => id))} />
-        </Dialog>
-      )}
+      slots={sheetSlots}
       frame={(bar, panes) => (
         <PageFrame
           title={text.sheet.tryTitle}

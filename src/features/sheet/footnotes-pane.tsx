@@ -44,13 +44,7 @@ function Readout({ store }: { store: ChartStore }) {
       <table className="w-full border-collapse">
         <thead>
           <tr className="text-note text-soft">
-            {[
-              text.sheet.ledger.roles.sweep,
-              `${words.cursor} A`,
-              `${words.cursor} B`,
-              words.difference,
-              words.ratio,
-            ].map((head) => (
+            {[words.sweep, `${words.cursor} A`, `${words.cursor} B`, words.difference, words.ratio].map((head) => (
               <th key={head} scope="col" className="py-1 pe-4 text-start font-normal">
                 {head}
               </th>

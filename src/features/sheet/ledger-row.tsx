@@ -107,7 +107,7 @@ function RowFacts({ sweep }: { sweep: SweepRow }) {
   const warning = rowWarning(sweep);
   return (
     <span className="block text-note text-soft">
-      {role !== 'sweep' && <span className="font-medium text-ink">{words.roles[role]} · </span>}
+      {role !== 'sweep' && <span className="font-medium text-ink">{text.project.roles[role]} · </span>}
       {range}
       {!hasPhase && ` · ${words.magnitudeOnly}`}
       {warning && (

@@ -1,9 +1,24 @@
-import { createContext, useContext } from 'react';
+import { createContext, type ReactNode, useContext } from 'react';
 import type { Result } from '../../../shared/contracts/result.js';
 import type { SweepRow } from '../../../shared/contracts/sweep.js';
 import type { Output } from '../../../shared/output.js';
 import type { Points } from '../../../shared/points.js';
 import type { SheetState } from './use-sheet-content.js';
+
+/** What the page puts into a sheet from other features. */
+export interface SheetSlots {
+  /** Unpack, over the sheet. */
+  unpack(slot: UnpackSlot): ReactNode;
+  /** Name, role and what was told with a sweep. */
+  conditions(sweep: SweepRow): ReactNode;
+  /** The reading rule of a sweep, to be corrected. */
+  readAgain(sweep: SweepRow): ReactNode;
+}
+export interface UnpackSlot {
+  /** The sweeps that were stored, to be drawn. */
+  onAdded(sweepIds: readonly string[]): void;
+  onClose(): void;
+}
 
 /** What the panes of one sheet share. */
 export interface SheetScene {
@@ -21,6 +36,7 @@ export interface SheetScene {
   setOverlay(cardId: string, output: Output | undefined): void;
   setCursorA(hz: number): void;
   openUnpack(files?: readonly File[]): void;
+  readonly slots: SheetSlots;
   readonly readOnlyReason: string | undefined;
 }
 

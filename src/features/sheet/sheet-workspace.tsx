@@ -14,7 +14,7 @@ import { FootnotesPane } from './footnotes-pane.js';
 import { LedgerPane } from './ledger-pane.js';
 import { PaneLayout } from './pane-layout.js';
 import { ResultsPane } from './results-pane.js';
-import { SheetSceneProvider } from './sheet-context.js';
+import { SheetSceneProvider, type SheetSlots } from './sheet-context.js';
 import { change, draw } from './sheet-edits.js';
 import { useRangeHistory } from './use-range-history.js';
 import { useSheetContent } from './use-sheet-content.js';
@@ -23,15 +23,9 @@ import { useWorkspaceKeys } from './use-workspace-keys.js';
 
 const words = text.sheet;
 
-export interface UnpackSlot {
-  /** The sweeps that were stored, to be drawn. */
-  onAdded(sweepIds: readonly string[]): void;
-  onClose(): void;
-}
 interface SheetWorkspaceProps {
   sheet: Sheet;
-  /** Unpack, over the sheet: the page puts it here. */
-  unpack: (slot: UnpackSlot) => ReactNode;
+  slots: SheetSlots;
   /** The page's frame around the panes; it is given the bar of the sheet. */
   frame: (bar: ReactNode, panes: ReactNode) => ReactNode;
   /** Files were dropped on the way here: Unpack is open at once, and takes them. */
@@ -39,7 +33,7 @@ interface SheetWorkspaceProps {
 }
 
 /** A sheet: ledger, chart, results and footnotes over one saved view. */
-export function SheetWorkspace({ sheet, unpack, frame, opensUnpack }: SheetWorkspaceProps) {
+export function SheetWorkspace({ sheet, slots, frame, opensUnpack }: SheetWorkspaceProps) {
   const { readOnlyReason } = useProjectStore();
   const state = useSheetContent(sheet);
   const [isUnpacking, setIsUnpacking] = useState(opensUnpack);
@@ -53,7 +47,7 @@ export function SheetWorkspace({ sheet, unpack, frame, opensUnpack }: SheetWorks
     state.edit(change(next), kind === 'cursor' ? 'cursor' : undefined);
     if (kind === 'range') pushRange(next);
   });
-  const scene = useSheetScene({ sheet, state, openUnpack });
+  const scene = useSheetScene({ sheet, state, slots, openUnpack });
   useWorkspaceKeys(state);
   const bar = <SheetBar state={state} />;
   return (
@@ -72,7 +66,7 @@ export function SheetWorkspace({ sheet, unpack, frame, opensUnpack }: SheetWorks
         )}
       </DropPage>
       {isUnpacking &&
-        unpack({
+        slots.unpack({
           onAdded: (sweepIds) => {
             state.edit(draw(...sweepIds));
             setIsUnpacking(false);

@@ -6,19 +6,20 @@ import type { Output } from '../../../shared/output.js';
 import type { Points } from '../../../shared/points.js';
 import { useProjectStore } from '../../lib/project-store/store-context.js';
 import { pointsQuery, resultsQuery, sweepsQuery } from '../../lib/project-store/store-queries.js';
-import type { SheetScene } from './sheet-context.js';
+import type { SheetScene, SheetSlots } from './sheet-context.js';
 import { change } from './sheet-edits.js';
 import type { SheetState } from './use-sheet-content.js';
 
 interface SceneParts {
   sheet: Sheet;
   state: SheetState;
+  slots: SheetSlots;
   openUnpack: (files?: readonly File[]) => void;
 }
 const NONE: never[] = [];
 
 /** Everything the panes of a sheet share: rows, points as they arrive, the active sweep, the curves of the cards. */
-export function useSheetScene({ sheet, state, openUnpack }: SceneParts): SheetScene {
+export function useSheetScene({ sheet, state, slots, openUnpack }: SceneParts): SheetScene {
   const store = useProjectStore();
   const sweeps = useQuery(sweepsQuery(store)).data ?? NONE;
   const resultsAnswer = useQuery(resultsQuery(store));
@@ -49,6 +50,7 @@ export function useSheetScene({ sheet, state, openUnpack }: SceneParts): SheetSc
     setOverlay,
     setCursorA: (hz) => state.edit(change({ cursorAHz: hz })),
     openUnpack,
+    slots,
     readOnlyReason: store.readOnlyReason,
   };
 }
