@@ -15,6 +15,7 @@ const EnvironmentSchema = z.object({
   HUMMOCK_PUBLIC_URL: z.url({ protocol: /^https?$/ }).optional(), // as people type it; behind a proxy it has to be given
   HUMMOCK_TRUST_PROXY: z.string().min(1).optional(), // which proxies may say who asks: "loopback", "10.0.0.0/8", "1"
   HUMMOCK_SECRET: z.string().min(32).optional(), // the same on all servers of one database
+  HUMMOCK_DEMO: z.enum(['yes', 'no']).optional(), // none: only where nobody but this machine can reach it
   HUMMOCK_LOG_LEVEL: z.enum(['silent', 'fatal', 'error', 'warn', 'info', 'debug']).default('info'),
   HUMMOCK_MAIL_FROM: z.string().min(3).default('Hummock <hummock@localhost>'),
   SMTP_URL: z
@@ -32,6 +33,7 @@ export interface Config {
   readonly publicUrl: string | undefined;
   readonly trustProxy: string | number | false;
   readonly secret: string;
+  readonly hasDemo: boolean; // the invented school, with a password that is printed
   readonly logLevel: string;
   readonly mailFrom: string;
   readonly smtpUrl: string | undefined;
@@ -62,10 +64,16 @@ export function readConfig(environment: Readonly<Record<string, string | undefin
     publicUrl: values.HUMMOCK_PUBLIC_URL && new URL(values.HUMMOCK_PUBLIC_URL).origin,
     trustProxy: hops === undefined ? false : /^\d+$/.test(hops) ? Number(hops) : hops,
     secret: values.HUMMOCK_SECRET ?? keptSecret(dataDir),
+    hasDemo: values.HUMMOCK_DEMO === undefined ? isForThisMachine(values) : values.HUMMOCK_DEMO === 'yes',
     logLevel: values.HUMMOCK_LOG_LEVEL,
     mailFrom: values.HUMMOCK_MAIL_FROM,
     smtpUrl: values.SMTP_URL,
   };
+}
+
+function isForThisMachine(values: z.infer<typeof EnvironmentSchema>): boolean {
+  const { hostname } = new URL(values.HUMMOCK_PUBLIC_URL ?? `http://${values.HUMMOCK_HOST.replace(/^.*:.*$/, '[$&]')}`);
+  return ['localhost', '127.0.0.1', '[::1]'].includes(hostname);
 }
 
 /** A secret of this installation, made on the first start; whoever deletes it signs everybody out. */

@@ -6,6 +6,7 @@ import { text } from '../shared/text.js';
 import { createApp } from './app.js';
 import { type Config, ConfigError, readConfig } from './config.js';
 import { makeDataSource } from './database/data-source.js';
+import { seedDemo } from './demo/seed.js';
 import { graphileJobs, startWorker } from './jobs/graphile-jobs.js';
 import { makeTasks } from './jobs/tasks.js';
 import { startMailSink } from './mail/mail-sink.js';
@@ -21,6 +22,8 @@ async function start(config: Config, logger: Logger, endings: Ending[]): Promise
   endings.push(() => dataSource.destroy());
   const migrations = await dataSource.runMigrations();
   if (migrations.length > 0) logger.info({ migrations: migrations.map(({ name }) => name) }, 'migrated');
+
+  const demo = config.hasDemo ? await seedDemo(dataSource) : undefined;
 
   const sink = config.smtpUrl ? undefined : await startMailSink(join(config.dataDir, 'mail'), logger);
   if (sink) endings.push(() => sink.close());
@@ -48,7 +51,8 @@ async function start(config: Config, logger: Logger, endings: Ending[]): Promise
   });
   const worker = await startWorker(config.databaseUrl, tasks, logger);
   endings.push(() => worker.stop());
-  logger.info({ event: 'ready', url: publicUrl, port, pid: process.pid }, 'ready');
+  const tell = demo ? [text.server.demoSignIn(demo.email, demo.password)] : [];
+  logger.info({ event: 'ready', url: publicUrl, port, pid: process.pid, tell }, 'ready');
 }
 
 async function main(): Promise<void> {

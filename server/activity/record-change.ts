@@ -14,7 +14,8 @@ export type OwnAction =
   | 'person:reset-password'
   | 'session:create'
   | 'session:end'
-  | 'bin:purge';
+  | 'bin:purge'
+  | 'demo:seed';
 
 export interface ChangeRecord {
   readonly actor: { readonly personId: string } | null; // null: the product itself

@@ -1,3 +1,4 @@
+import { airOf, bulkModulusPa } from '../../calculators/acoustics/air.js';
 import { add, type Complex, inverse, multiply, parallel, real } from './complex.js';
 
 /**
@@ -5,7 +6,7 @@ import { add, type Complex, inverse, multiply, parallel, real } from './complex.
  * Analysis", J. Audio Eng. Soc. 20 (1972), "Vented-Box Loudspeaker Systems", JAES 21 (1973) and "Passive-Radiator
  * Loudspeaker Systems", JAES 22 (1974), from memory; the coil as an inductor beside an eddy branch. SI units.
  */
-export const AIR_STIFFNESS_PA = 1.2041 * 343.21 ** 2; // ρc² at 20 °C
+export const AIR_STIFFNESS_PA = bulkModulusPa(airOf()); // ρc² at 20 °C
 
 export interface DemoDriver {
   readonly reOhm: number;

@@ -48,6 +48,7 @@ export const server = {
   notReady: 'The server is starting, or its database is away. Try again in a moment.',
   internalError:
     'Something went wrong on the server. What you sent was not stored. Try again; if it comes back, send us the reference.',
+  demoSignIn: (email: string, password: string) => `Demo sign-in: ${email}, password ${password}`,
   unknownDevice: 'Unknown device',
   device: (browser: string, system: string) => `${browser} on ${system}`,
   firstTeam: (name: string) => `Team of ${name}`,
