@@ -30,7 +30,7 @@ export function NumberField(props: NumberFieldProps) {
   const shown = useShownUnit(value, usualValue, unit, units);
   const plain = value === null ? '' : formatForField(value, shown.symbol, format.locale);
   const [draft, setDraft] = useState<string>();
-  const parsed = draft === undefined || draft.trim() === '' ? null : parseQuantity(draft, unit, shown);
+  const parsed = draft === undefined || draft.trim() === '' ? null : parseQuantity(draft, unit, shown, format.locale);
   const isOdd = draft !== undefined && draft.trim() !== '' && parsed === null;
   const isRewritten = parsed !== null && parsed.unit.symbol !== shown.symbol;
   const understood =
@@ -49,7 +49,7 @@ export function NumberField(props: NumberFieldProps) {
           value={draft ?? plain}
           onChange={(event) => {
             setDraft(event.target.value);
-            onValue(parseQuantity(event.target.value, unit, shown)?.valueSi ?? null);
+            onValue(parseQuantity(event.target.value, unit, shown, format.locale)?.valueSi ?? null);
           }}
           onBlur={() => {
             if (!isOdd) setDraft(undefined);

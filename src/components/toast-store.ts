@@ -64,12 +64,12 @@ export function runLatestAction(): boolean {
   return true;
 }
 
+export function shownToasts(): readonly Toast[] {
+  return toasts;
+}
 export function useToasts(): readonly Toast[] {
-  return useSyncExternalStore(
-    (listener) => {
-      listeners.add(listener);
-      return () => listeners.delete(listener);
-    },
-    () => toasts,
-  );
+  return useSyncExternalStore((listener) => {
+    listeners.add(listener);
+    return () => listeners.delete(listener);
+  }, shownToasts);
 }

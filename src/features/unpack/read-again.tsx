@@ -18,8 +18,8 @@ import { newEntry, ruleToShow, stateAfterReading } from './unpack-entry.js';
 
 interface ReadAgainProps {
   sweep: SweepRow;
-  /** What stands beside the curve; the rule is handed over to find its place there. */
-  aside: (rule: ReactNode) => ReactNode;
+  /** What stands beside the curve; the rule is handed over to find its place there. The rule alone if left out. */
+  aside?: (rule: ReactNode) => ReactNode;
 }
 
 /** A stored sweep as its rule reads it; a corrected rule shows what it gives, and is stored as a new revision. */
@@ -69,7 +69,7 @@ export function ReadAgain({ sweep, aside }: ReadAgainProps) {
   return (
     <div className="grid gap-6 lg:grid-cols-[minmax(0,1fr)_22rem]">
       <SweepPreview entry={entry} />
-      {aside(ruleForm)}
+      {aside ? aside(ruleForm) : ruleForm}
     </div>
   );
 }
