@@ -83,6 +83,13 @@ function refuseMarkup(head: string, fileName: string): void {
     .replace(/^\ufeff/, '')
     .trimStart()
     .slice(0, 2000);
+  if (/^(\{|\[\s*[[{\d"-])/.test(start)) {
+    throw new InputError(
+      'not-a-curve',
+      'This is structured data, not a table. Export the sweep as rows of text.',
+      fileName,
+    );
+  }
   if (!start.startsWith('<')) return;
   if (/<(!doctype\s+html|html|head|body|table|script|meta)\b/i.test(start)) {
     throw new InputError(

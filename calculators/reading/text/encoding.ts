@@ -41,7 +41,7 @@ function toldCharacters(bytes: Uint8Array, told: Encoding, checkpoint: () => voi
       throw new InputError(
         'bad-setting',
         'UTF-16 needs an even number of bytes; this file has an odd one. Choose another encoding.',
-        'encoding',
+        'reading.encoding',
       );
     }
     const hasMark = startsWith(bytes, told === 'utf-16le' ? [0xff, 0xfe] : [0xfe, 0xff]);

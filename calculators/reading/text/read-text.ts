@@ -62,7 +62,7 @@ function planOf(found: Recognised, isPair: boolean): ScanPlan {
   take.push(taken(column(isPair ? 'real' : 'magnitude'), size));
   if (isPair) take.push(taken(column('imaginary'), size));
   else if (column('phase') >= 0) take.push(taken(column('phase'), 0));
-  const decimals = new Set(guess.rows.map((row) => row.at(-1)?.decimals ?? 0));
+  const decimals = new Set(guess.rows.slice(0, -1).map((row) => row.at(-1)?.decimals ?? 0)); // but the last: it may be cut off
   const fixedDecimals = guess.rows.length >= 8 && decimals.size === 1 ? ([...decimals][0] ?? 0) : 0;
   const { dataStart, headerLines } = layout;
   return { dialect: guess.dialect, shape: guess.shape, take, dataStart, firstLine: headerLines + 1, fixedDecimals };

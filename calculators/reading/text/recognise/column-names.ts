@@ -48,8 +48,8 @@ export function meaningOf(name: string): ColumnMeaning {
     .toLowerCase()
     .replace(/re\.?\s*:?\s*1\s*(ohm|ω)/g, 'dbohm')
     .replaceAll('\u2126', 'ω');
-  const parts = plain.split(/[\s_\-()[\]{},;:=]+|\.(?=\s|$)|(?<=\w)\/(?!s)|(?<=[ω°])\//).filter((part) => part !== '');
-  const cased = name.split(/[\s_\-()[\]{},;:=]+|(?<=\w)\/(?!s)/).filter((part) => part !== '');
+  const parts = plain.split(/[\s_\-()[\]{},;:=]+|\.(?=\s|$)|(?<!rad)\//).filter((part) => part !== '');
+  const cased = name.split(/[\s_\-()[\]{},;:=]+|\.(?=\s|$)|(?<!rad)\//).filter((part) => part !== '');
   let kind: NamedKind | undefined;
   for (const [candidate, pattern] of KIND_WORDS) {
     if (parts.some((part, i) => pattern.test(part) && !(part === 'ω' && i > 0))) {

@@ -26,16 +26,14 @@ export function guessColumns(
   const numeric = [...guess.shape.isNumber.keys()].filter((i) => guess.shape.isNumber[i]);
   const named = (kind: ColumnMeaning['kind']) => numeric.filter((i) => meanings[i]?.kind === kind);
   const free = numeric.filter((i) => meanings[i]?.kind !== 'other');
-  const frequency =
-    named('frequency')[0] ??
-    steadiest(
-      guess,
-      free.filter((i) => meanings[i]?.kind === undefined),
-    );
+  const unnamed = free.filter((i) => meanings[i]?.kind === undefined);
+  const guessed =
+    named('frequency').length > 0 ? { frequency: named('frequency')[0], counts: [] } : steadiest(guess, unnamed);
+  const { frequency, counts } = guessed;
   if (frequency === undefined) return undefined;
-  const rest = free.filter((i) => i !== frequency && meanings[i]?.kind !== 'frequency');
+  const rest = free.filter((i) => i !== frequency && meanings[i]?.kind !== 'frequency' && !counts.includes(i));
   if (rest.length === 0) return undefined;
-  const { first, second } = pairOf(rest, named);
+  const { first, second } = pairOf(rest, (kind) => named(kind).filter((i) => rest.includes(i)));
   const kinds: ColumnKind[] = guess.shape.isNumber.map(() => 'ignore');
   kinds[frequency] = 'frequency';
   const steady = turns(sampleColumn(guess, frequency)) === 0;
@@ -121,27 +119,25 @@ function weigh(
 }
 
 function misfitOf(sense: Omit<Sense, 'misfitDeg'>, curve: ReturnType<typeof sampleCurve>): number {
-  const { frequency, first, second } = curve;
-  if (frequency.length < 8) return 90;
+  const [size, angle] = sense.pair === 'phase+magnitude' ? [curve.second, curve.first] : [curve.first, curve.second];
   const isPair = sense.pair === 'real+imaginary';
-  const [size, angle] = sense.pair === 'phase+magnitude' ? [second, first] : [first, second];
-  const negative = size.filter((value) => !(value > 0)).length / size.length;
-  if (sense.magnitudeUnit !== 'dB' && negative > (isPair ? 0.1 : 0)) return 170; // a passive part has |Z| and Re Z above zero
+  const isLevel = sense.magnitudeUnit === 'dB';
+  const usable = [...size.keys()].filter((i) => isLevel || size[i]! > 0); // a passive part has |Z| and Re Z above zero
+  if (curve.frequency.length < 8) return 90;
+  if (usable.length < 0.9 * size.length) return 170;
   const turn = sense.phaseUnit === 'radian' ? 1 : Math.PI / 180;
-  const lnMagnitude = size.map((value, i) =>
-    isPair
-      ? Math.log(Math.hypot(value, angle[i]!) || 1e-300)
-      : sense.magnitudeUnit === 'dB'
-        ? (value * Math.LN10) / 20
-        : Math.log(value),
-  );
-  const phase = angle.map((value, i) => (isPair ? Math.atan2(value, size[i]!) : value * turn));
+  const lnMagnitude = usable.map((i) => {
+    if (isPair) return Math.log(Math.hypot(size[i]!, angle[i]!));
+    return isLevel ? (size[i]! * Math.LN10) / 20 : Math.log(size[i]!);
+  });
+  const phase = usable.map((i) => (isPair ? Math.atan2(angle[i]!, size[i]!) : angle[i]! * turn));
+  const frequency = usable.map((i) => curve.frequency[i]!);
   const { asWritten, turned } = phaseMisfit(frequency, lnMagnitude, phase);
   return Math.min(asWritten, turned + 3);
 }
 
-/** The column that is most like a frequency: steady, positive, first. A mere count of rows (0, 1, 2 …) gives way to a better one. */
-function steadiest(guess: DialectGuess, candidates: readonly number[]): number | undefined {
+/** The column that is most like a frequency: steady, positive, first. A mere count of rows (0, 1, 2 …) beside a better one is none. */
+function steadiest(guess: DialectGuess, candidates: readonly number[]) {
   const columns = candidates.map((column) => {
     const values = sampleColumn(guess, column);
     const steady = 1 - turns(values) / Math.max(1, values.length / 2);
@@ -156,8 +152,8 @@ function steadiest(guess: DialectGuess, candidates: readonly number[]): number |
   });
   const isMereCount = ({ values, column }: (typeof columns)[number]) =>
     candidates.length > 2 && isCount(values) && columns.some((other) => other.column !== column && other.reachesUp);
-  const rank = (entry: (typeof columns)[number]) => entry.score - (isMereCount(entry) ? 0.7 : 0);
-  return columns.sort((a, b) => rank(b) - rank(a))[0]?.column;
+  const best = columns.filter((entry) => !isMereCount(entry)).sort((a, b) => b.score - a.score)[0];
+  return { frequency: best?.column, counts: columns.filter(isMereCount).map((entry) => entry.column) };
 }
 
 function isCount(values: Float64Array): boolean {

@@ -33,7 +33,11 @@ export function guessDialect(
   if (!best) return undefined;
   const rival = fitting.find(
     (other) =>
-      other !== best && other.agreeing >= 0.98 * best.agreeing && columnsOf(other) >= 2 && !sameNumbers(best, other),
+      other !== best &&
+      other.agreeing >= 0.98 * best.agreeing &&
+      columnsOf(other) >= 2 &&
+      wordsOf(other) <= wordsOf(best) &&
+      !sameNumbers(best, other),
   );
   return { ...best, rival: rival?.dialect };
 }
@@ -46,7 +50,7 @@ function candidates(text: Characters, lines: readonly Line[], told: ReadingOverr
       for (const thousandsMark of told.thousandsMark ? [told.thousandsMark] : THOUSANDS) {
         const isPointless = decimalMark === 'comma' && !told.decimalMark && !seen.has('comma');
         const isUnseen = !told.thousandsMark && thousandsMark !== 'none' && !seen.has(`group-${thousandsMark}`);
-        const clashes = thousandsMark === decimalMark || thousandsMark === separator;
+        const clashes = thousandsMark === decimalMark || (thousandsMark === separator && !seen.has('quote'));
         if (!isPointless && !isUnseen && !clashes) all.push({ separator, decimalMark, thousandsMark });
       }
     }
@@ -59,6 +63,7 @@ function seenMarks(codes: Uint8Array, lines: readonly Line[]): Set<string> {
   const names: Readonly<Record<number, string>> = {
     9: 'tab',
     32: 'space',
+    34: 'quote',
     39: 'apostrophe',
     44: 'comma',
     46: 'point',

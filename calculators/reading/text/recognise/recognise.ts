@@ -1,5 +1,6 @@
 import type { Guess, Reading, ReadingOverrides } from '../../../../shared/contracts/reading.js';
 import { readingText as words } from '../../../../shared/text/reading.js';
+import { QUOTE } from '../characters.js';
 import type { Characters } from '../encoding.js';
 import { type ColumnsGuess, guessColumns } from './guess-columns.js';
 import { type DialectGuess, guessDialect } from './guess-dialect.js';
@@ -20,7 +21,7 @@ export interface Recognised {
 
 /** Decides separator, decimal mark, headings, columns and units from a sample of the lines and from what the person set. */
 export function recognise(text: Characters, overrides: ReadingOverrides, fileName: string): Recognised {
-  refuseClash(overrides);
+  refuseClash(overrides, text.codes.includes(QUOTE));
   const lines = sampleLines(text.codes);
   const guess = guessDialect(text, lines, overrides);
   if (!guess || numbersIn(guess.shape) < 2) {
@@ -28,6 +29,7 @@ export function recognise(text: Characters, overrides: ReadingOverrides, fileNam
     throw (isFree ? undefined : refuseDialect(overrides, guessDialect(text, lines, {}))) ?? noTable(guess, fileName);
   }
   if (guess.agreeing < 8 && guess.lines > 40 && guess.agreeing < 0.2 * guess.lines) throw notACurve(fileName);
+  if (isProse(guess)) throw notACurve(fileName);
   const layout = findLayout(text, guess, overrides.headerLines);
   if (!layout) {
     if (overrides.headerLines === undefined) throw notACurve(fileName);
@@ -40,6 +42,10 @@ export function recognise(text: Characters, overrides: ReadingOverrides, fileNam
   const columns = chooseColumns(guess, meanings, overrides, fileName);
   return { text, guess, layout, columns, units: guessUnits(guess, columns, meanings, overrides) };
 }
+
+/** Sentences that are much alike part into words and numbers in the same places. */
+const isProse = ({ dialect, shape }: DialectGuess): boolean =>
+  dialect.separator === 'space' && shape.fields > 2 * numbersIn(shape);
 
 const KIND_OF_UNIT = {
   frequency: 'frequency',

@@ -8,7 +8,7 @@ export const badSetting = (setting: keyof ReadingOverrides, message: string): In
   new InputError('bad-setting', message, `reading.${setting}`);
 
 /** The person's separator and marks must be told apart. Error: `bad-setting`. */
-export function refuseClash(told: ReadingOverrides): void {
+export function refuseClash(told: ReadingOverrides, hasQuotes: boolean): void {
   const { separator, decimalMark, thousandsMark } = told;
   if (!thousandsMark || thousandsMark === 'none') return;
   if (thousandsMark === decimalMark) {
@@ -17,7 +17,7 @@ export function refuseClash(told: ReadingOverrides): void {
       `The ${thousandsMark} cannot be the decimal mark and part thousands too. Change one of the two.`,
     );
   }
-  if (thousandsMark === separator) {
+  if (thousandsMark === separator && !hasQuotes) {
     throw badSetting(
       'thousandsMark',
       `The ${thousandsMark} cannot part columns and thousands both. Change one of the two.`,

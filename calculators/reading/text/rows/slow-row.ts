@@ -1,3 +1,4 @@
+import { QUOTE } from '../characters.js';
 import { commentAt, remarkAt, withoutMark } from '../comments.js';
 import { SEPARATOR_CODE } from '../dialect.js';
 import type { Characters } from '../encoding.js';
@@ -27,9 +28,17 @@ export function slowRow(text: Characters, plan: ScanPlan, table: Table, at: Line
     const fields = splitRow(text, at.start, at.end, plan.dialect);
     const refusal = take(text, fields, plan, table, at);
     if (refusal === undefined || takeBeforeRemark(text, plan, table, at)) return;
-    if (comment === 'maybe') keepComment(text, table, at);
+    if (comment === 'maybe' && isComment(codes, plan, at, fields)) keepComment(text, table, at);
     else refuseRow(text, plan, table, at, fields, refusal);
   }
+}
+
+/** Behind ; or a quote stands a comment, unless the mark parts columns or closes again and there are numbers. */
+function isComment(codes: Uint8Array, plan: ScanPlan, at: LineAt, fields: readonly Field[]): boolean {
+  if (!fields.some((field) => field.kind === 'number')) return true;
+  let quotes = 0;
+  for (let p = at.start; p < at.end; p += 1) if (codes[p] === QUOTE) quotes += 1;
+  return quotes % 2 === 1 || (quotes === 0 && plan.dialect.separator !== 'semicolon');
 }
 
 /** A row with a remark behind it: the row is taken, the remark kept as a comment. */
