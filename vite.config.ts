@@ -16,6 +16,7 @@ export default defineConfig({
   worker: { format: 'es' },
   server: {
     host: '127.0.0.1',
+    watch: { ignored: ['**/.data/**', '**/.cache/**', '**/dist/**', '**/tests/**'] },
     proxy: { '/api': { target: apiOrigin } },
   },
 });
