@@ -7,7 +7,7 @@ import { createApp } from './app.js';
 import { type Config, ConfigError, readConfig } from './config.js';
 import { makeDataSource } from './database/data-source.js';
 import { seedDemo } from './demo/seed.js';
-import { graphileJobs, startWorker } from './jobs/graphile-jobs.js';
+import { graphileJobs, prepareQueue, startWorker } from './jobs/graphile-jobs.js';
 import { makeTasks } from './jobs/tasks.js';
 import { startMailSink } from './mail/mail-sink.js';
 import { smtpMailer } from './mail/mailer.js';
@@ -22,6 +22,7 @@ async function start(config: Config, logger: Logger, endings: Ending[]): Promise
   endings.push(() => dataSource.destroy());
   const migrations = await dataSource.runMigrations();
   if (migrations.length > 0) logger.info({ migrations: migrations.map(({ name }) => name) }, 'migrated');
+  await prepareQueue(config.databaseUrl, logger);
 
   const demo = config.hasDemo ? await seedDemo(dataSource) : undefined;
 

@@ -1,4 +1,4 @@
-import { Logger as GraphileLogger, type Runner, run, type TaskList } from 'graphile-worker';
+import { Logger as GraphileLogger, type Runner, run, runMigrations, type TaskList } from 'graphile-worker';
 import type { Logger } from 'pino';
 import type { Jobs, TaskName, Tasks } from './jobs.js';
 
@@ -31,7 +31,12 @@ export function graphileLogger(logger: Logger): GraphileLogger {
   });
 }
 
-/** Starts the worker in this process; it makes its own tables on first use. */
+/** The queue's own tables: there before the first request may ask for a job. */
+export function prepareQueue(databaseUrl: string, logger: Logger): Promise<void> {
+  return runMigrations({ connectionString: databaseUrl, logger: graphileLogger(logger) });
+}
+
+/** Starts the worker in this process. */
 export function startWorker(databaseUrl: string, tasks: Tasks, logger: Logger): Promise<Runner> {
   return run({
     connectionString: databaseUrl,

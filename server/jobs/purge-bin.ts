@@ -1,5 +1,7 @@
 import type { DataSource, EntityManager } from 'typeorm';
 import { recordChange } from '../activity/record-change.js';
+import { PostgresFileStore } from '../files/postgres-file-store.js';
+import { purgeSourceFiles } from '../files/purge-source-files.js';
 import { BIN_DAYS } from '../teams/bin.js';
 
 const DAY_MS = 86_400_000;
@@ -45,7 +47,7 @@ export async function purgeBin(dataSource: DataSource, now: Date): Promise<numbe
       step = await dataSource.transaction((manager) => purgeSome(manager, kind, before));
     }
   }
-  await removeLeftovers(dataSource.manager, before, now);
+  await removeLeftovers(dataSource, before, now);
   return removed;
 }
 
@@ -65,13 +67,10 @@ async function purgeSome(manager: EntityManager, kind: Kind, before: Date): Prom
 }
 
 /** Bytes that no sweep names any more, and what the account pages no longer need. */
-async function removeLeftovers(manager: EntityManager, before: Date, now: Date): Promise<void> {
+async function removeLeftovers(dataSource: DataSource, before: Date, now: Date): Promise<void> {
+  const { manager } = dataSource;
   const yesterday = new Date(now.getTime() - DAY_MS); // an upload may be on its way
-  await manager.query(
-    `DELETE FROM source_file f WHERE f.created_at < $1
-      AND NOT EXISTS (SELECT 1 FROM sweep s WHERE s.source_file_id = f.id)`,
-    [yesterday],
-  );
+  await purgeSourceFiles(dataSource, new PostgresFileStore(dataSource), yesterday);
   await manager.query('DELETE FROM mail_code WHERE expires_at < $1', [before]);
   await manager.query('DELETE FROM session WHERE ended_at < $1 OR expires_at < $1', [before]);
   await manager.query('DELETE FROM rate_limit WHERE expire < $1', [yesterday.getTime()]);

@@ -28,7 +28,10 @@ export function pagePolicy(isSecure: () => boolean): RequestHandler[] {
     frameAncestors: ["'none'"],
     objectSrc: ["'none'"],
   };
-  const common = { contentSecurityPolicy: { useDefaults: false, directives } } as const;
+  const common = {
+    contentSecurityPolicy: { useDefaults: false, directives },
+    xFrameOptions: { action: 'deny' },
+  } as const;
   const secure = helmet(common);
   const plain = helmet({ ...common, strictTransportSecurity: false }); // on loopback, without TLS
   return [

@@ -5,6 +5,8 @@ import type { Problem } from '../../shared/contracts/problem.js';
 import { AppError, ERROR_STATUS, InputError } from '../../shared/errors.js';
 import { text } from '../../shared/text.js';
 
+const MEGABYTE = 1_048_576;
+
 interface Refusal {
   error: AppError;
   issues?: Problem['issues'];
@@ -39,8 +41,9 @@ function refusalOf(error: unknown): Refusal {
   }
   const type = (error as { type?: string } | undefined)?.type;
   if (type === 'entity.too.large') {
-    const kilobytes = Math.round(((error as { limit?: number }).limit ?? 0) / 1024);
-    return { error: new AppError('too-large', text.server.tooLarge(`${kilobytes} kB`), {}, error) };
+    const bytes = (error as { limit?: number }).limit ?? 0;
+    const limit = bytes < MEGABYTE ? `${Math.round(bytes / 1024)} kB` : `${Math.round(bytes / MEGABYTE)} MB`;
+    return { error: new AppError('too-large', text.server.tooLarge(limit), {}, error) };
   }
   if (type !== undefined && UNREADABLE.has(type)) {
     return { error: new AppError('validation-failed', text.server.bodyUnreadable, {}, error) };
