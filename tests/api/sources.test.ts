@@ -4,6 +4,9 @@ import { request } from 'node:http';
 import { tmpdir } from 'node:os';
 import { join as joinPath } from 'node:path';
 import { expect, it } from 'vitest';
+import { SourceFileEntity } from '../../server/database/entities/source-file.entity.js';
+import { PostgresFileStore } from '../../server/files/postgres-file-store.js';
+import { purgeSourceFiles } from '../../server/files/purge-source-files.js';
 import type { Problem } from '../../shared/contracts/problem.js';
 import { KnownSourcesAnswerSchema, SweepSchema } from '../../shared/contracts/sweep.js';
 import { decodePoints } from '../../shared/points.js';
@@ -247,4 +250,23 @@ it('counts uploads, so that one person cannot fill the store', async () => {
   const statuses: number[] = [];
   for (const ohm of [8.1, 8.2, 8.3]) statuses.push((await upload(person.client, project, tableOf(ohm))).status);
   expect(statuses).toEqual([201, 201, 429]);
+});
+
+it('keeps a file that an upload takes up while the bin is being emptied, and removes one that nobody names', async () => {
+  const sweep = await uploaded(client, projectId, tableOf(9.5));
+  const { manager } = app.dataSource;
+  await manager.query('DELETE FROM sweep WHERE id = $1', [sweep.id]);
+  const files = new PostgresFileStore(app.dataSource);
+  const tomorrow = new Date(Date.now() + 86_400_000);
+  const isThere = () => manager.existsBy(SourceFileEntity, { id: sweep.source.id });
+  await app.dataSource.transaction(async (uploading) => {
+    await uploading.query('UPDATE source_file SET project_id = project_id WHERE id = $1', [sweep.source.id]);
+    await purgeSourceFiles(app.dataSource, files, tomorrow);
+  });
+  expect(await isThere()).toBe(true);
+  await purgeSourceFiles(app.dataSource, files, new Date(0)); // made later than that
+  expect(await isThere()).toBe(true);
+  await purgeSourceFiles(app.dataSource, files, tomorrow);
+  expect(await isThere()).toBe(false);
+  expect(await uploaded(client, projectId, tableOf(9.5))).toMatchObject({ revision: { number: 1 } });
 });
