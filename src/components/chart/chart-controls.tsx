@@ -1,7 +1,7 @@
 import { ArrowLeft, ArrowRight, Minus, Plus, Undo2, X } from 'lucide-react';
 import { type ReactNode, useId, useState } from 'react';
 import type { CursorName } from '../../../shared/drawing/marks/cursors.js';
-import { parseQuantity } from '../../../shared/quantity-parsing.js';
+import { parseQuantity } from '../../../shared/quantity-parse.js';
 import { formatDigits, formatPlain } from '../../../shared/quantity-text.js';
 import { text } from '../../../shared/text.js';
 import {
@@ -200,11 +200,11 @@ function CursorField({ view, locale, cursor, isChosen }: CursorFieldProps) {
   const [typed, setTyped] = useState<string | null>(null);
   const take = () => {
     if (typed === null) return;
-    const parsed = parseQuantity(typed, 'Hz', { locale, unit: 'Hz' });
+    const typedHz = parseQuantity(typed, 'Hz', undefined, locale)?.valueSi;
     setTyped(null);
-    if (parsed.isUnderstood && parsed.valueSi > 0) {
+    if (typedHz !== undefined && typedHz > 0) {
       view.store.chooseCursor(cursor);
-      placeCursor(view, cursor, parsed.valueSi, true);
+      placeCursor(view, cursor, typedHz, true);
     } else if (typed.trim() === '') removeCursor(view, cursor);
   };
   return (

@@ -1,6 +1,6 @@
 import type { Range, ScaleKind } from '../../../shared/drawing/scales/axis-scale.js';
 import { usableRange } from '../../../shared/drawing/scales/ranges.js';
-import { parseQuantity } from '../../../shared/quantity-parsing.js';
+import { parseQuantity } from '../../../shared/quantity-parse.js';
 import { text } from '../../../shared/text.js';
 import type { AxisName } from './chart-view.js';
 
@@ -16,8 +16,7 @@ const words = text.chart.controls;
 /** Both ends as numbers, or why they are none. */
 export function readEnds(ends: readonly string[], axis: AxisName, kind: ScaleKind, locale?: string): Range | string {
   const [low, high] = ends.map((typed) => {
-    const parsed = parseQuantity(typed, SI_UNIT[axis], { locale, unit: SI_UNIT[axis] });
-    return parsed.isUnderstood ? parsed.valueSi : Number.NaN;
+    return parseQuantity(typed, SI_UNIT[axis], undefined, locale)?.valueSi ?? Number.NaN;
   });
   if (low === undefined || high === undefined || Number.isNaN(low + high)) return words.rangeNumber;
   if (kind === 'log' && low <= 0) return words.rangePositive;
