@@ -252,7 +252,7 @@ export function kernelFiles() {
         "import type { NormalSums } from '../../numerics/least-squares-problem.js';",
         "import { type Loss, lossValue, lossWeight } from '../../numerics/losses.js';",
         "import { REFERENCE_OMEGA } from '../frequency-grid.js';",
-        "import type { KernelData } from './kernel-data.js';",
+        "import type { KernelData } from '../kernel-data.js';",
       ];
       return [`${kebab(coil.name)}.ts`, `${head.join('\n')}\n${text}`];
     }),

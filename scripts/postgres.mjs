@@ -35,10 +35,11 @@ export async function ensureCluster(root, { say = silent } = {}) {
   openFolder(join(checkout, '.data'));
   const unlock = await lockFile(join(checkout, '.data', 'postgres.lock'));
   try {
+    const newest = serverPrograms(say); // first of all: installing PostgreSQL also makes the user that it runs as
     const home = clusterHome(checkout, say);
     const dataDir = join(home, 'data');
     const user = existsSync(dataDir) ? ownerOf(dataDir) : unprivilegedUser();
-    const programs = serverPrograms(say, majorOf(dataDir));
+    const programs = existsSync(dataDir) ? serverPrograms(say, majorOf(dataDir)) : newest;
     if (!existsSync(dataDir)) {
       say('Making a PostgreSQL cluster of its own.');
       createCluster({ home, user, programs });
@@ -154,6 +155,7 @@ const THROW_AWAY = /^hummock-throw-away-(\d+)-(\d+)-/;
  * @returns {Promise<Cluster & { stop: () => Promise<void> }>}
  */
 export async function startThrowAwayCluster({ say = silent } = {}) {
+  const programs = serverPrograms(say); // first of all: installing PostgreSQL also makes the user that it runs as
   const user = unprivilegedUser();
   const base = temporaryFolder();
   await sweepThrowAways(base);
@@ -162,7 +164,6 @@ export async function startThrowAwayCluster({ say = silent } = {}) {
   openFolder(home);
   const dataDir = join(home, 'data');
   const logPath = join(home, 'postgres.log');
-  const programs = serverPrograms(say);
   const password = createCluster({ home, user, programs, durable: false });
   const settings = ['fsync=off', 'synchronous_commit=off', 'full_page_writes=off', 'max_connections=200'];
   const started = await postmasterStart({ dataDir, logPath, user, programs, settings, endsWithParent: true });
