@@ -7,8 +7,8 @@ import {
   ItemSchema,
   UpdateItemSchema,
 } from '../../shared/contracts/item.js';
-import { optionalVersionOf, versionOf } from '../database/edit-row.js';
 import { answer } from '../middleware/answer.js';
+import { optionalVersionOf, versionOf } from '../middleware/if-match.js';
 import { actorOf } from '../permissions/actor.js';
 import type { ItemService } from './service.js';
 

@@ -9,8 +9,8 @@ import {
   UpdateLimitSetSchema,
 } from '../../shared/contracts/limit-set.js';
 import { PageQuerySchema } from '../../shared/contracts/paging.js';
-import { optionalVersionOf, versionOf } from '../database/edit-row.js';
 import { answer } from '../middleware/answer.js';
+import { optionalVersionOf, versionOf } from '../middleware/if-match.js';
 import { actorOf } from '../permissions/actor.js';
 import type { LimitSetService } from './service.js';
 

@@ -4,8 +4,8 @@ import { LetterSentSchema, MeSchema, SessionListSchema, UpdateMeSchema } from '.
 import type { SessionCookies } from '../account/cookies.js';
 import type { AccountService } from '../account/service.js';
 import type { Sessions } from '../account/sessions.js';
-import { versionOf } from '../database/edit-row.js';
 import { answer } from '../middleware/answer.js';
+import { versionOf } from '../middleware/if-match.js';
 import type { RateLimits } from '../middleware/rate-limits.js';
 import { actorOf } from '../permissions/actor.js';
 import type { MeService } from './service.js';

@@ -7,8 +7,8 @@ import {
   ProjectSchema,
   UpdateProjectSchema,
 } from '../../shared/contracts/project.js';
-import { optionalVersionOf, versionOf } from '../database/edit-row.js';
 import { answer } from '../middleware/answer.js';
+import { optionalVersionOf, versionOf } from '../middleware/if-match.js';
 import { actorOf } from '../permissions/actor.js';
 import type { ProjectService } from './service.js';
 

@@ -7,8 +7,8 @@ import {
   ResultSchema,
   UpdateResultSchema,
 } from '../../shared/contracts/result.js';
-import { optionalVersionOf, versionOf } from '../database/edit-row.js';
 import { answer } from '../middleware/answer.js';
+import { optionalVersionOf, versionOf } from '../middleware/if-match.js';
 import { actorOf } from '../permissions/actor.js';
 import type { ResultService } from './service.js';
 

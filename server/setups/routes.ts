@@ -9,8 +9,8 @@ import {
   SetupVersionPageSchema,
   UpdateSetupSchema,
 } from '../../shared/contracts/setup.js';
-import { optionalVersionOf, versionOf } from '../database/edit-row.js';
 import { answer } from '../middleware/answer.js';
+import { optionalVersionOf, versionOf } from '../middleware/if-match.js';
 import { actorOf } from '../permissions/actor.js';
 import type { SetupService } from './service.js';
 

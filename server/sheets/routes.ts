@@ -2,8 +2,8 @@ import { Router } from 'express';
 import { z } from 'zod';
 import { PageQuerySchema } from '../../shared/contracts/paging.js';
 import { CreateSheetSchema, SheetPageSchema, SheetSchema, UpdateSheetSchema } from '../../shared/contracts/sheet.js';
-import { optionalVersionOf, versionOf } from '../database/edit-row.js';
 import { answer } from '../middleware/answer.js';
+import { optionalVersionOf, versionOf } from '../middleware/if-match.js';
 import { actorOf } from '../permissions/actor.js';
 import type { SheetService } from './service.js';
 

@@ -9,8 +9,8 @@ import {
   SweepSchema,
   UpdateSweepSchema,
 } from '../../shared/contracts/sweep.js';
-import { optionalVersionOf, versionOf } from '../database/edit-row.js';
 import { answer } from '../middleware/answer.js';
+import { optionalVersionOf, versionOf } from '../middleware/if-match.js';
 import { actorOf } from '../permissions/actor.js';
 import { isKnownTag, neverChanges } from '../sources/download.js';
 import type { BatchService } from './batches.js';
