@@ -159,6 +159,9 @@ const quality: readonly FigureDeclaration[] = [
   ),
 ];
 
+/** What a builder looks for first. */
+const MAIN = new Set(['Re', 'fs', 'Qms', 'Qes', 'Qts', 'Le1k', 'Vas', 'Mms', 'Cms', 'Bl', 'Sd', 'SPL2V83', 'ratedZ']);
+
 /** Every figure that driver-fit can return, in the order of its tables. */
 export const figureList: readonly FigureDeclaration[] = [
   ...resonance,
@@ -167,4 +170,4 @@ export const figureList: readonly FigureDeclaration[] = [
   ...level,
   ...parameters,
   ...quality,
-];
+].map((figure) => (MAIN.has(figure.id) ? { ...figure, isMain: true } : figure));

@@ -132,6 +132,7 @@ export const sheet = {
     standard: 'Standard uncertainty, k = 1',
     showStandard: 'Show the standard uncertainty',
     noValue: 'cannot be known',
+    tiny: '± below 0.0001 %',
     allFigures: 'All figures',
     fewerFigures: 'The main figures',
     findings: 'Findings',

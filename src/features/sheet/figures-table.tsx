@@ -1,7 +1,7 @@
 import { useState } from 'react';
 import type { FigureDeclaration } from '../../../calculators/kit/calculator.js';
 import type { Figure } from '../../../shared/output.js';
-import { formatInterval, formatUncertain, type QuantityFormat } from '../../../shared/quantity-text.js';
+import { formatInterval, formatQuantity, formatUncertain, type QuantityFormat } from '../../../shared/quantity-text.js';
 import { text } from '../../../shared/text.js';
 import { Button } from '../../components/button.js';
 import { Checkbox } from '../../components/checkbox.js';
@@ -9,6 +9,7 @@ import { classNames } from '../../lib/class-names.js';
 import { usePreferences } from '../../lib/preferences.js';
 
 const words = text.sheet.results;
+const LEAST_SHOWN = 5e-7; // relative: a ± below it would fill the row with digits that nobody can use
 
 interface FiguresTableProps {
   figures: readonly Figure[];
@@ -117,6 +118,8 @@ export function figureText(
   const { value, unit, uncertainty, dof, interval } = figure;
   if (value === null) return { value: '–', spread: words.noValue };
   if (typeof value === 'string') return { value, spread: '' };
+  const isExact = uncertainty !== undefined && uncertainty > 0 && uncertainty < LEAST_SHOWN * Math.abs(value);
+  if (isExact && !interval) return { value: formatQuantity(value, unit, { ...format, digits: 7 }), spread: words.tiny };
   const written = formatUncertain({ value, uncertainty, dof }, unit, format);
   if (showsStandard) return { value: written.value, spread: written.standard };
   if (interval) return { value: written.value, spread: formatInterval(interval.low, interval.high, unit, format) };
