@@ -1,6 +1,6 @@
 import type { ComplexArray } from '../numerics/complex-array.js';
 import type { FrequencyGrid } from './frequency-grid.js';
-import { type CoilModel, coilParameters } from './voice-coil.js';
+import { type CoilModel, coilParameters, NO_SHUNT } from './voice-coil.js';
 
 /** The coil's part of a curve: what is left of Z when Re and the resonance are taken off. Shapes (m). */
 export interface CoilRemainder {
@@ -58,9 +58,19 @@ const START: Readonly<Record<CoilModel, (remainder: CoilRemainder) => number[]>>
       const size = 1 / (yRe * yRe + yIm * yIm);
       return [yRe * size, -yIm * size];
     });
-    return [l1, second / Math.sqrt(corner), second, 0];
+    return withShunt([l1, second / Math.sqrt(corner), second, NO_SHUNT], 0.1);
   },
 };
+
+/**
+ * Coil values of semi-inductance without Rss turned into ones with it, the curve unchanged to first order: a start from which a
+ * fit can find out whether the curve asks for Rss. `share` = Gss·K²/Le, 0.05 to 0.3.
+ */
+export function withShunt([leb, le, k]: readonly number[], share: number): number[] {
+  const q = (k! * k!) / le!;
+  const gss = share / q;
+  return [leb! + gss * k! * k!, le! * Math.exp(-share), k! * Math.exp(-2 * share), gss];
+}
 
 /** Weighted straight line of ln(part) over ln(ω/ω0) through the positive values: [part at 1 kHz, slope]. */
 function powerLine({ coilGrid: { logOmegaRatio }, coilWeight }: CoilRemainder, part: Float64Array): [number, number] {

@@ -1,13 +1,14 @@
 import type { Sweep } from '../kit/sweep.js';
 import { leastSquares } from '../numerics/least-squares.js';
-import type { LeastSquaresFit, LeastSquaresOptions, LeastSquaresProblem } from '../numerics/least-squares-problem.js';
+import type { LeastSquaresFit, LeastSquaresOptions } from '../numerics/least-squares-problem.js';
 import { COMPLEX_MEDIAN_TO_SIGMA, MAD_TO_SIGMA, median, medianInPlace } from '../numerics/statistics.js';
+import { withShunt } from './coil-start.js';
 import { type DriverModel, FREE_AIR } from './driver-impedance.js';
 import { driverSweepProblem } from './driver-sweep-problem.js';
 import { motionalStart, startValues } from './start-values.js';
 import type { SuspensionModel } from './suspension.js';
 import { type SweepData, sweepData } from './sweep-term.js';
-import type { CoilModel } from './voice-coil.js';
+import { type CoilModel, coilParameters, NO_SHUNT } from './voice-coil.js';
 
 export interface SweepFitOptions {
   readonly coil: CoilModel;
@@ -15,7 +16,7 @@ export interface SweepFitOptions {
   /** Weight of ln(Z/Zmodel) at each point, shape (n); 1 (relative misfit) where left out, 0 switches a point off. */
   readonly weights?: Float64Array;
   readonly robust: boolean;
-  /** Natural values in the order of `driverParameters`; from the curve where left out. */
+  /** Natural values in the order of `driverParameters`; from the curve where left out. Its Gss decides whether Rss is fitted. */
   readonly start?: ArrayLike<number>;
   readonly checkpoint?: () => void;
 }
@@ -36,89 +37,105 @@ const LEAST_SCALE = 1e-9; // noise-free curves: rounding of the arithmetic
 const RESCALINGS = 3;
 const OUTLIER_SCALES = 5;
 const CAUCHY_SCALES = 2;
-const CLEARLY_THERE = 3.29; // standard errors
-const EARLY: Partial<LeastSquaresOptions> = { covariance: false, relativeOffset: 0.03 };
+const EARLY: LeastSquaresOptions = { covariance: false, relativeOffset: 0.03 };
+const SHUNT_SHARE = 0.2; // of the start that tries Rss, see withShunt
+const CLEARLY_THERE = 3.29; // standard errors: one in a thousand by chance
+const GSS_AT = 4 + coilParameters('semi-inductance').findIndex(({ id }) => id === 'Gss');
 
 /**
  * Fits one sweep. Robust: a soft-L1 fit from the start, then Cauchy with the scale taken from the median of the misfit,
  * three times; then the points beyond five scales are left out and a plain fit gives values and covariance.
  * Source: common practice in robust regression; the order of steps is our own, from trials.
+ * The optional Rss of semi-inductance stays only where the curve clearly asks for it: left in without need it drags Leb, Le
+ * and K along. Where it does not, Gss is among `atBound` and the status is at-bound.
  */
 export function fitDriverSweep(sweep: Sweep | SweepData, options: SweepFitOptions): DriverSweepFit {
   const data = 'grid' in sweep ? sweep : sweepData(sweep);
-  const { coil, suspension, robust, checkpoint } = options;
-  const model: DriverModel = { coil, suspension, load: FREE_AIR };
-  const given = options.weights ?? new Float64Array(data.re.length).fill(1);
-  const start = options.start ?? startValues(motionalStart(data), coil, suspension);
-  const problem = driverSweepProblem(model, data, given);
-  const common = checkpoint ? { checkpoint } : {};
-  if (!robust) {
-    const fit = withoutIdleRss(model, data, given, leastSquares(problem, start, common));
-    return { model, fit, scale: misfitScale(problem, fit.values, data.hasPhase).scale, outliers: [], weights: given };
-  }
-  const typical = median(given.filter((weight) => weight > 0));
-  let values = leastSquares(problem, start, {
-    ...common,
-    ...EARLY,
-    loss: 'soft-l1',
-    lossScale: SOFT_SCALE * typical,
-  }).values;
-  let { scale, sizes } = misfitScale(problem, values, data.hasPhase);
-  for (let round = 0; round < RESCALINGS; round++) {
-    values = leastSquares(problem, values, {
-      ...common,
-      ...EARLY,
-      loss: 'cauchy',
-      lossScale: CAUCHY_SCALES * scale,
-    }).values;
-    ({ scale, sizes } = misfitScale(problem, values, data.hasPhase));
-  }
-  const weights = given.map((weight, i) => (sizes[i]! > OUTLIER_SCALES * scale ? 0 : weight));
-  const outliers = [...weights.keys()].filter((i) => weights[i] === 0 && given[i]! > 0);
-  const fit = withoutIdleRss(
-    model,
-    data,
-    weights,
-    leastSquares(driverSweepProblem(model, data, weights), values, common),
-  );
-  return { model, fit, scale, outliers, weights };
+  const { coil, suspension, start } = options;
+  const task = new SweepTask({ coil, suspension, load: FREE_AIR }, data, options);
+  const first = Float64Array.from(start ?? startValues(motionalStart(data), coil, suspension));
+  if (coil !== 'semi-inductance') return task.fit(first, false);
+  if (start) return task.fit(first, first[GSS_AT]! <= NO_SHUNT);
+  first[GSS_AT] = 0;
+  const without = task.fit(first, true);
+  const values = without.fit.values.slice();
+  values.set(withShunt([...values.subarray(4, 8)], SHUNT_SHARE), 4);
+  const rows = without.fit.dof + without.fit.values.length;
+  const trial = task.plain(without.weights, values, false);
+  const gain = rows * Math.log(without.fit.cost / trial.cost);
+  if (!(gain > Math.max(Math.log(rows), CLEARLY_THERE ** 2)) || trial.status === 'stalled') return without;
+  return task.finish(trial.values, false);
 }
 
-/**
- * Rss is optional in the semi-inductance model: it stays only where the curve clearly asks for it, Gss/u(Gss) above both
- * √ln N (the Bayesian criterion) and 3.29 (one in a thousand by chance). Left in without need it drags Leb, Le and K along.
- */
-function withoutIdleRss(
-  model: DriverModel,
-  data: SweepData,
-  weights: Float64Array,
-  fit: LeastSquaresFit,
-): LeastSquaresFit {
-  if (model.coil !== 'semi-inductance') return fit;
-  const problem = driverSweepProblem(model, data, weights, ['Gss']);
-  const at = problem.parameters.findIndex(({ id }) => id === 'Gss');
-  const rows = problem.activeCount ?? problem.residualCount;
-  const limit = Math.max(Math.log(rows), CLEARLY_THERE * CLEARLY_THERE);
-  if (fit.values[at]! ** 2 > limit * fit.standardErrors[at]! ** 2 && fit.status === 'converged') return fit;
-  const start = fit.values.slice();
-  start[at] = 0;
-  const simpler = leastSquares(problem, start);
-  if (simpler.status === 'stalled' || rows * Math.log(simpler.cost / fit.cost) > limit) return fit;
-  return {
-    ...simpler,
-    status: simpler.status === 'converged' ? 'at-bound' : simpler.status,
-    atBound: [...simpler.atBound, 'Gss'],
-  };
-}
+/** One sweep with one model; every step may hold Rss at none. */
+class SweepTask {
+  private readonly given: Float64Array;
+  private readonly common: LeastSquaresOptions;
 
-/** |weighted misfit| of each point (n) and the scale from its median. */
-function misfitScale(problem: LeastSquaresProblem, values: Float64Array, complex: boolean) {
-  const rows = new Float64Array(problem.residualCount);
-  problem.residual(values, rows);
-  const sizes = complex
-    ? Float64Array.from({ length: rows.length / 2 }, (_, i) => Math.hypot(rows[2 * i]!, rows[2 * i + 1]!))
-    : rows.map(Math.abs);
-  const middle = medianInPlace(sizes.filter((size) => size > 0));
-  const scale = complex ? middle / COMPLEX_MEDIAN_TO_SIGMA : middle * MAD_TO_SIGMA;
-  return { sizes, scale: Math.max(Number.isFinite(scale) ? scale : 0, LEAST_SCALE) };
+  constructor(
+    private readonly model: DriverModel,
+    private readonly data: SweepData,
+    private readonly options: SweepFitOptions,
+  ) {
+    this.given = options.weights ?? new Float64Array(data.re.length).fill(1);
+    this.common = options.checkpoint ? { checkpoint: options.checkpoint } : {};
+  }
+
+  fit(start: Float64Array, withoutRss: boolean): DriverSweepFit {
+    if (!this.options.robust) return this.described(this.plain(this.given, start, withoutRss), this.given);
+    const typical = median(this.given.filter((weight) => weight > 0));
+    const early = { ...this.common, ...EARLY };
+    let { values } = leastSquares(this.problem(this.given, withoutRss), start, {
+      ...early,
+      loss: 'soft-l1',
+      lossScale: SOFT_SCALE * typical,
+    });
+    for (let round = 0; round < RESCALINGS; round++) {
+      const lossScale = CAUCHY_SCALES * this.misfit(values).scale;
+      values = leastSquares(this.problem(this.given, withoutRss), values, {
+        ...early,
+        loss: 'cauchy',
+        lossScale,
+      }).values;
+    }
+    return this.finish(values, withoutRss);
+  }
+
+  /** The last step: leave out what lies far from these values, fit the rest plainly. */
+  finish(values: Float64Array, withoutRss: boolean): DriverSweepFit {
+    if (!this.options.robust) return this.described(this.plain(this.given, values, withoutRss), this.given);
+    const { sizes, scale } = this.misfit(values);
+    const weights = this.given.map((weight, i) => (sizes[i]! > OUTLIER_SCALES * scale ? 0 : weight));
+    return this.described(this.plain(weights, values, withoutRss), weights);
+  }
+
+  plain(weights: Float64Array, start: Float64Array, withoutRss: boolean): LeastSquaresFit {
+    const fit = leastSquares(this.problem(weights, withoutRss), start, this.common);
+    if (!withoutRss) return fit;
+    const status = fit.status === 'converged' ? 'at-bound' : fit.status;
+    return { ...fit, status, atBound: [...fit.atBound, 'Gss'] };
+  }
+
+  private problem(weights: Float64Array, withoutRss: boolean) {
+    return driverSweepProblem(this.model, this.data, weights, withoutRss ? ['Gss'] : []);
+  }
+
+  private described(fit: LeastSquaresFit, weights: Float64Array): DriverSweepFit {
+    const outliers = [...weights.keys()].filter((i) => weights[i] === 0 && this.given[i]! > 0);
+    return { model: this.model, fit, scale: this.misfit(fit.values).scale, outliers, weights };
+  }
+
+  /** |weighted misfit| of each point (n) and the scale from its median. */
+  private misfit(values: Float64Array): { sizes: Float64Array; scale: number } {
+    const problem = this.problem(this.given, false);
+    const rows = new Float64Array(problem.residualCount);
+    problem.residual(values, rows);
+    const { hasPhase } = this.data;
+    const sizes = hasPhase
+      ? Float64Array.from({ length: rows.length / 2 }, (_, i) => Math.hypot(rows[2 * i]!, rows[2 * i + 1]!))
+      : rows.map(Math.abs);
+    const middle = medianInPlace(sizes.filter((_, i) => this.given[i]! > 0));
+    const scale = hasPhase ? middle / COMPLEX_MEDIAN_TO_SIGMA : middle * MAD_TO_SIGMA;
+    return { sizes, scale: Math.max(Number.isFinite(scale) ? scale : 0, LEAST_SCALE) };
+  }
 }

@@ -5,8 +5,8 @@ import type { FitParameter, NormalSums } from '../numerics/least-squares-problem
 import { type Loss, lossValue, lossWeight } from '../numerics/losses.js';
 import { type DriverModel, driverImpedance, driverParameters } from './driver-impedance.js';
 import { type FrequencyGrid, frequencyGrid } from './frequency-grid.js';
-import { fusedKernel } from './kernels/fused-kernel.js';
-import type { Kernel } from './kernels/kernel-data.js';
+import { fusedKernel } from './fused-kernel.js';
+import type { Kernel } from './kernel-data.js';
 
 /** A sweep made ready for fitting. Shapes (n). Without phase, `im` and `phaseRad` are 0 and only |Z| is fitted. */
 export interface SweepData {

@@ -22,8 +22,14 @@ const logged = (id: string, lower: number, upper: number): FitParameter => ({ id
 const exponent = (id: string, lower: number, upper: number): FitParameter => ({ id, lower, upper, maxStep: 0.3 });
 
 /**
+ * Smallest conductance a fit may reach (Rss 100 kΩ); to leave Rss out, hold Gss at 0. Not 0 for a free one: there the model loses its dependence on Gss to first order, since with
+ * q = K²/Le the change −P² of the parallel part P is K²·jω − 2q·∂P/∂ln K − q·∂P/∂ln Le for Gss = 0, and a fit could not leave.
+ */
+export const NO_SHUNT = 1e-5;
+
+/**
  * What is fitted. H, ohm, ohm·s^½ (K of semi-inductance); K1k, Kr1k, Ki1k are the power laws' values in ohm at 1 kHz;
- * Gss = 1/Rss in siemens, because "no Rss" is then the bound 0 and not a plateau without end.
+ * Gss = 1/Rss in siemens, because "no Rss" is then a bound and not a plateau without end.
  * Bounds are wide guards around what voice coils are made like (common practice, no published source).
  */
 const PARAMETERS: Readonly<Record<CoilModel, readonly FitParameter[]>> = {
@@ -40,7 +46,7 @@ const PARAMETERS: Readonly<Record<CoilModel, readonly FitParameter[]>> = {
     logged('Leb', 1e-9, 0.1),
     logged('Le', 1e-7, 10),
     logged('K', 1e-6, 100),
-    { id: 'Gss', lower: 0, upper: 1e3, typical: 1e-2, maxStep: 0.1 },
+    { id: 'Gss', lower: NO_SHUNT, upper: 1e3, typical: 1e-2, maxStep: 0.1 },
   ],
 };
 
@@ -182,8 +188,9 @@ export function coilFigures(model: CoilModel, values: ArrayLike<number>, at: num
     const gradient = parameters.map(() => 0);
     const value = values[at + k]!;
     if (id === 'Gss') {
-      if (value > 0) gradient[k] = -1 / (value * value);
-      return { id: 'Rss', unit: 'Ω', value: value > 0 ? 1 / value : null, gradient };
+      const isThere = value > NO_SHUNT;
+      if (isThere) gradient[k] = -1 / (value * value);
+      return { id: 'Rss', unit: 'Ω', value: isThere ? 1 / value : null, gradient };
     }
     if (!id.endsWith('1k')) {
       gradient[k] = logScaled ? value : 1;

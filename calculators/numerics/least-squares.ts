@@ -286,7 +286,8 @@ class Iteration {
   }
 }
 
-function clampTo({ lower, upper }: FitParameter, value: number): number {
+function clampTo({ held, lower, upper }: FitParameter, value: number): number {
+  if (held) return value;
   if (lower !== undefined && value < lower) return lower;
   if (upper !== undefined && value > upper) return upper;
   return value;

@@ -2,7 +2,7 @@
 import type { NormalSums } from '../../numerics/least-squares-problem.js';
 import { type Loss, lossValue, lossWeight } from '../../numerics/losses.js';
 import { REFERENCE_OMEGA } from '../frequency-grid.js';
-import type { KernelData } from './kernel-data.js';
+import type { KernelData } from '../kernel-data.js';
 
 export function splitPowerLawConstant(v: ArrayLike<number>, data: KernelData, weights: Float64Array, loss: Loss, out: NormalSums): void {
   const { frequencyHz, period, logOmegaRatio } = data.grid, zRe = data.re, zIm = data.im, n = weights.length;

@@ -1,6 +1,6 @@
-import type { NormalSums } from '../../numerics/least-squares-problem.js';
-import type { Loss } from '../../numerics/losses.js';
-import type { FrequencyGrid } from '../frequency-grid.js';
+import type { NormalSums } from '../numerics/least-squares-problem.js';
+import type { Loss } from '../numerics/losses.js';
+import type { FrequencyGrid } from './frequency-grid.js';
 
 /** What a fused kernel reads of a sweep: the measured impedance in ohm, shapes (n). */
 export interface KernelData {

@@ -1,12 +1,12 @@
-import type { DriverModel } from '../driver-impedance.js';
-import type { SuspensionModel } from '../suspension.js';
-import type { CoilModel } from '../voice-coil.js';
-import { inductorConstant, inductorCreep, inductorRelaxing } from './inductor.js';
-import { inductorEddyConstant, inductorEddyCreep, inductorEddyRelaxing } from './inductor-eddy.js';
+import type { DriverModel } from './driver-impedance.js';
 import type { Kernel } from './kernel-data.js';
-import { powerLawConstant, powerLawCreep, powerLawRelaxing } from './power-law.js';
-import { semiInductanceConstant, semiInductanceCreep, semiInductanceRelaxing } from './semi-inductance.js';
-import { splitPowerLawConstant, splitPowerLawCreep, splitPowerLawRelaxing } from './split-power-law.js';
+import { inductorConstant, inductorCreep, inductorRelaxing } from './kernels/inductor.js';
+import { inductorEddyConstant, inductorEddyCreep, inductorEddyRelaxing } from './kernels/inductor-eddy.js';
+import { powerLawConstant, powerLawCreep, powerLawRelaxing } from './kernels/power-law.js';
+import { semiInductanceConstant, semiInductanceCreep, semiInductanceRelaxing } from './kernels/semi-inductance.js';
+import { splitPowerLawConstant, splitPowerLawCreep, splitPowerLawRelaxing } from './kernels/split-power-law.js';
+import type { SuspensionModel } from './suspension.js';
+import type { CoilModel } from './voice-coil.js';
 
 const KERNELS: Readonly<Record<CoilModel, Readonly<Record<SuspensionModel, Kernel>>>> = {
   inductor: { constant: inductorConstant, creep: inductorCreep, relaxing: inductorRelaxing },
