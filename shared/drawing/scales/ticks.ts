@@ -83,10 +83,8 @@ function spacedOut(scale: AxisScale, values: readonly number[], gapPx: number, p
 
 /** Evenly spaced values; also on a logarithmic axis when it shows less than a whole multiple. */
 function linearPlan(scale: AxisScale, { labelGapPx, isAngle }: TickOptions): TickPlan {
-  const lengthPx = Math.abs(scale.endPx - scale.startPx);
-  const span = scale.max - scale.min;
-  const wanted = Math.max(1, Math.floor(lengthPx / labelGapPx));
-  const step = niceStep(span / wanted, isAngle === true && span > 8);
+  const pxPerUnit = Math.abs(scale.slope) / (scale.kind === 'log' ? scale.max : 1); // where they lie closest
+  const step = niceStep(labelGapPx / pxPerUnit, isAngle === true && scale.max - scale.min > 8);
   const labelled = multiplesOf(step, scale);
   const parts = isAngle && step >= 15 ? 3 : leadingDigit(step) === 2 ? 4 : 5;
   const light = multiplesOf(step / parts, scale).filter(
