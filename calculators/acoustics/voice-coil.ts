@@ -22,8 +22,8 @@ const logged = (id: string, lower: number, upper: number): FitParameter => ({ id
 const exponent = (id: string, lower: number, upper: number): FitParameter => ({ id, lower, upper, maxStep: 0.3 });
 
 /**
- * Smallest conductance a fit may reach (Rss 100 kΩ); to leave Rss out, hold Gss at 0. Not 0 for a free one: there the model loses its dependence on Gss to first order, since with
- * q = K²/Le the change −P² of the parallel part P is K²·jω − 2q·∂P/∂ln K − q·∂P/∂ln Le for Gss = 0, and a fit could not leave.
+ * Smallest conductance a fit may reach (Rss 100 kΩ); to leave Rss out, hold Gss at 0. A free one could not leave 0: with
+ * q = K²/Le the change −P² of the parallel part P is there K²·jω − 2q·∂P/∂ln K − q·∂P/∂ln Le, what the others can do too.
  */
 export const NO_SHUNT = 1e-5;
 

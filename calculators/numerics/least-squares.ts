@@ -262,7 +262,8 @@ class Iteration {
       const value = this.values[k]!;
       const delta = this.step[k]!;
       let next = parameter.logScaled ? value * Math.exp(delta) : value + delta;
-      if (delta <= this.toLower[k]!) next = parameter.lower!;
+      if (parameter.held) next = value;
+      else if (delta <= this.toLower[k]!) next = parameter.lower!;
       else if (delta >= this.toUpper[k]!) next = parameter.upper!;
       this.trial[k] = clampTo(parameter, next);
       if (this.trial[k] !== value) moved = true;
