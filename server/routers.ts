@@ -3,6 +3,7 @@ import { accountRouter } from './account/routes.js';
 import { activityRouter } from './activity/routes.js';
 import { ActivityService } from './activity/service.js';
 import type { AppParts } from './app-parts.js';
+import { isDatabaseReady } from './health/database-state.js';
 import { healthRouter } from './health/routes.js';
 import { itemRouter } from './items/routes.js';
 import { ItemService } from './items/service.js';
@@ -17,7 +18,7 @@ import { teamRouter } from './teams/routes.js';
 export function apiRouters(parts: AppParts): Router[] {
   const { dataSource, access } = parts;
   return [
-    healthRouter(dataSource),
+    healthRouter(() => isDatabaseReady(dataSource)),
     accountRouter(parts),
     meRouter(parts),
     teamRouter(new BinService(dataSource, access)),

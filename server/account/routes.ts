@@ -49,8 +49,10 @@ export function accountRouter({ account, sessions, cookies, me, limits }: Parts)
     const input = SignInSchema.parse(request.body);
     await limits.spend('sign-in-origin', origin(request));
     await limits.spend('sign-in-address', input.email);
+    const pair = `${input.email} ${origin(request)}`;
+    await limits.spend('sign-in-pair', pair);
     const signedIn = await account.signIn(input, device(request));
-    await limits.clear('sign-in-address', input.email);
+    await limits.clear('sign-in-pair', pair); // a right password starts anew
     await welcome(response, signedIn);
   });
   router.post('/account/sign-out', async (request, response) => {

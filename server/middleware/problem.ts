@@ -23,6 +23,14 @@ const UNREADABLE = new Set([
 /** SQLSTATE of a text that PostgreSQL cannot hold: the character of code 0, or half of a pair. */
 const UNSTORABLE = new Set(['22021', '22P05', '22P02']);
 
+/** The database is away: no connection, or one that was ended (SQLSTATE 57P01 to 57P03, 53300, 55000). */
+const AWAY = new Set(['ECONNREFUSED', 'ECONNRESET', 'ETIMEDOUT', '57P01', '57P02', '57P03', '53300', '55000']);
+
+function databaseCodeOf(error: unknown): string {
+  const own = error instanceof QueryFailedError ? error.driverError : error;
+  return String((own as { code?: unknown } | undefined)?.code ?? '');
+}
+
 function refusalOf(error: unknown): Refusal {
   if (error instanceof AppError) {
     const { issues, ...detail } = error.detail; // a service that knows the field says so
@@ -36,7 +44,9 @@ function refusalOf(error: unknown): Refusal {
     return { error: new AppError('validation-failed', text.server.validationFailed(issues.length), {}, error), issues };
   }
   if (error instanceof URIError) return { error: new AppError('not-found', text.server.notFound, {}, error) };
-  if (error instanceof QueryFailedError && UNSTORABLE.has((error.driverError as { code?: string }).code ?? '')) {
+  const code = databaseCodeOf(error);
+  if (AWAY.has(code)) return { error: new AppError('not-ready', text.server.notReady, {}, error) };
+  if (error instanceof QueryFailedError && UNSTORABLE.has(code)) {
     return { error: new AppError('validation-failed', text.server.textUnstorable, {}, error) };
   }
   const type = (error as { type?: string } | undefined)?.type;
@@ -55,7 +65,8 @@ function refusalOf(error: unknown): Refusal {
 export function problemAnswer(): ErrorRequestHandler {
   return (thrown: unknown, request, response, next) => {
     const { error, issues } = refusalOf(thrown);
-    if (error.code === 'internal-error') request.log.error({ err: thrown }, 'not foreseen');
+    if (error.code === 'internal-error' || error.code === 'not-ready')
+      request.log.error({ err: thrown }, 'not foreseen');
     if (response.headersSent) return next(thrown); // Express then ends the connection
     const problem: Problem = {
       type: `/help/errors#${error.code}`,

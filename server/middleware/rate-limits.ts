@@ -11,7 +11,8 @@ export interface Allowance {
 }
 const MINUTE = 60;
 export const ALLOWANCES = {
-  'sign-in-address': { points: 12, duration: 15 * MINUTE }, // failed tries; a right password clears them
+  'sign-in-pair': { points: 12, duration: 15 * MINUTE }, // failed tries for one address from one place
+  'sign-in-address': { points: 100, duration: 15 * MINUTE }, // from everywhere: high, so that nobody can lock others out
   'sign-in-origin': { points: 300, duration: 15 * MINUTE },
   'register-origin': { points: 60, duration: 60 * MINUTE },
   'mail-address': { points: 6, duration: 60 * MINUTE }, // letters asked for one address

@@ -44,7 +44,7 @@ it('keeps codes of letters only as hashes, and none in the queue', async () => {
 
 it('answers a known and an unknown address alike, in body and in time', async () => {
   const many = { points: 1000, duration: 60 };
-  const open = await startApp({ allowances: { 'mail-address': many, 'sign-in-address': many } });
+  const open = await startApp({ allowances: { 'mail-address': many, 'sign-in-pair': many } });
   const { me } = await makePerson(open, 'Known');
   const ask = async (path: string, body: object) => {
     const began = performance.now();
@@ -196,7 +196,7 @@ it('names each field that needs another look, in words', async () => {
 });
 
 it('refuses after too many tries, says for how long, and a right password starts anew', async () => {
-  const limited = await startApp({ allowances: { 'sign-in-address': { points: 3, duration: 60 } } });
+  const limited = await startApp({ allowances: { 'sign-in-pair': { points: 3, duration: 60 } } });
   const { me } = await makePerson(limited, 'Tries');
   const tryWith = (password: string) =>
     limited.client().post<Problem>('/api/account/sign-in', { email: me.email, password });

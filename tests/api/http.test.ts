@@ -1,7 +1,8 @@
 import { Writable } from 'node:stream';
 import { brotliDecompressSync } from 'node:zlib';
+import pg from 'pg';
 import { pino } from 'pino';
-import { expect, it } from 'vitest';
+import { expect, inject, it } from 'vitest';
 import type { Problem } from '../../shared/contracts/problem.js';
 import { startApp } from './support/app.js';
 import { makeClientFiles } from './support/client-files.js';
@@ -26,6 +27,24 @@ it('says that it lives, and that it is ready while the database is and has every
   await other.dataSource.query('DELETE FROM migration');
   const behind = await other.client().get<Problem>('/api/ready');
   expect([behind.status, behind.body.code]).toEqual([503, 'not-ready']);
+});
+
+it('lives on without its database, says that it is not ready, and recovers by itself', async () => {
+  const other = await startApp();
+  const person = await makePerson(other, 'Patient');
+  const [{ name }] = await other.dataSource.query('SELECT current_database() AS name');
+  const admin = new pg.Client(inject('clusterUrl'));
+  await admin.connect();
+  await admin.query(`ALTER DATABASE ${name} ALLOW_CONNECTIONS false`);
+  await admin.query('SELECT pg_terminate_backend(pid) FROM pg_stat_activity WHERE datname = $1', [name]);
+  expect((await person.client.get('/api/health')).status).toBe(200);
+  const away = await person.client.get<Problem>('/api/ready');
+  expect([away.status, away.body.code]).toEqual([503, 'not-ready']);
+  const me = await person.client.get<Problem>('/api/me');
+  expect([me.status, me.body.code]).toEqual([503, 'not-ready']);
+  await admin.query(`ALTER DATABASE ${name} ALLOW_CONNECTIONS true`);
+  await admin.end();
+  expect((await person.client.get('/api/me')).status).toBe(200);
 });
 
 it('logs each request once as JSON, with the id that the answer carries', async () => {

@@ -10,7 +10,13 @@ import { emptyBin, makeWorld } from './support/world.js';
 
 const many = { points: 100_000, duration: 60 };
 const app = await startApp({
-  allowances: { 'sign-in-address': many, 'sign-in-origin': many, 'mail-address': many, 'code-origin': many },
+  allowances: {
+    'sign-in-address': many,
+    'sign-in-pair': many,
+    'sign-in-origin': many,
+    'mail-address': many,
+    'code-origin': many,
+  },
 });
 const owner = await makePerson(app, 'Owner');
 const stranger = await makePerson(app, 'Stranger');

@@ -54,7 +54,7 @@ export async function startApp(options: Partial<AppInputs> = {}): Promise<TestAp
     await app.close();
     server.closeAllConnections();
     await new Promise((resolve) => server.close(resolve));
-    await dataSource.destroy();
+    if (dataSource.isInitialized) await dataSource.destroy();
     await database.drop();
   });
 
