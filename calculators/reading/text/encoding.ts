@@ -84,12 +84,10 @@ function byteCharacters(
 }
 
 function allAscii(bytes: Uint8Array, checkpoint: () => void): boolean {
+  const isHigh = (byte: number) => byte > 127;
+  if (bytes.length < 8) return !bytes.some(isHigh);
   const lead = (4 - (bytes.byteOffset & 3)) & 3;
-  const words = new Uint32Array(
-    bytes.buffer,
-    bytes.byteOffset + Math.min(lead, bytes.length),
-    Math.max(0, (bytes.length - lead) >> 2),
-  );
+  const words = new Uint32Array(bytes.buffer, bytes.byteOffset + lead, (bytes.length - lead) >> 2);
   for (let i = 0; i < words.length; i += STRIDE) {
     let seen = 0;
     const to = Math.min(words.length, i + STRIDE);
@@ -97,7 +95,6 @@ function allAscii(bytes: Uint8Array, checkpoint: () => void): boolean {
     if (seen & 0x80808080) return false;
     checkpoint();
   }
-  const isHigh = (byte: number) => byte > 127;
   return !bytes.subarray(0, lead).some(isHigh) && !bytes.subarray(lead + 4 * words.length).some(isHigh);
 }
 

@@ -162,7 +162,8 @@ function plainDigits(codes: Uint8Array, start: number, end: number, dialect: Dia
     if (codes[p] === mark) {
       const next = mark === BLANK ? skipBlanks(codes, p, end) : p + 1;
       if (mark === BLANK && !isDigit(codes[next] ?? 0)) break; // a blank before a unit
-      if (group === 0 || group > 3 || (marks > 0 && group !== 3)) return undefined;
+      const isZero = marks === 0 && codes[p - group] === 48; // 0,254 is no number of thousands
+      if (group === 0 || group > 3 || isZero || (marks > 0 && group !== 3)) return undefined;
       p = next;
       group = 0;
       marks += 1;

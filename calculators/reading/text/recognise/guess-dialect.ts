@@ -113,13 +113,14 @@ const numbersIn = (key: string) => key.split('n').length - 1;
 const columnsOf = (guess: DialectGuess) => guess.shape.isNumber.filter(Boolean).length;
 const wordsOf = (guess: DialectGuess) => guess.shape.fields - columnsOf(guess); // empty fields too
 
-/** Two or more columns first; then more agreeing lines, fewer columns of words or nothing, a steadier column; then the order tried. */
+/** Two or more columns first; then more agreeing lines, fewer columns of words or nothing, a steadier column; a decimal mark before one of thousands; then the order tried. */
 function better(a: DialectGuess, b: DialectGuess): number {
   return (
     Number(columnsOf(b) >= 2) - Number(columnsOf(a) >= 2) ||
     b.agreeing - a.agreeing ||
     wordsOf(a) - wordsOf(b) ||
-    reversals(a) - reversals(b)
+    reversals(a) - reversals(b) ||
+    Number(a.dialect.thousandsMark !== 'none') - Number(b.dialect.thousandsMark !== 'none')
   );
 }
 

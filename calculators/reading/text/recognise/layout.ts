@@ -69,16 +69,17 @@ function headings(passed: readonly string[], guess: DialectGuess) {
   const comments = passed.map(withoutMark).filter((line) => line !== '');
   const nearest = passed.slice(-12).reverse();
   const count = guess.shape.fields;
-  const needed = Math.min(2, count);
   for (const [i, line] of nearest.entries()) {
     const names = headingsIn(line, count, guess.dialect);
     if (!names) continue;
     const meanings = names.map(meaningOf);
+    const isParted = i === 0 && guess.dialect.separator !== 'space' && names.every((name) => name !== ''); // one known word will do
+    const needed = isParted ? 1 : Math.min(2, count);
     const isUnitsOnly = names.every((name) => /^\W*[a-zA-ZΩ°µ/]{1,6}\W*$/.test(name));
     const above =
       isUnitsOnly && nearest[i + 1] ? headingsIn(nearest[i + 1] as string, count, guess.dialect) : undefined;
     const upper = above?.map(meaningOf);
-    if (upper && knownMeanings(upper) >= needed && above) {
+    if (upper && knownMeanings(upper) >= Math.min(2, count) && above) {
       const joined = upper.map((meaning, k) => ({
         kind: meaning.kind ?? meanings[k]?.kind,
         unit: meaning.unit ?? meanings[k]?.unit,
