@@ -11,6 +11,8 @@ import type { Actor } from '../permissions/actor.js';
 import { requireSoundResult } from './checked-result.js';
 import { loadedResult, loadedResults, toResults } from './result-rows.js';
 
+const MOST_RESULTS = 50; // of one page: each brings its curves
+
 const RESULT: EditableKind<ResultEntity, Result> = {
   noun: 'result',
   entity: ResultEntity,
@@ -34,7 +36,8 @@ export class ResultService {
     if (sheetId) rows.andWhere('x.sheetId = :sheetId', { sheetId });
     if (itemId) rows.andWhere('x.itemId = :itemId', { itemId });
     if (sweepId) rows.andWhere('x.inputs @> :sweep::jsonb', { sweep: JSON.stringify([{ sweepId }]) });
-    const { items, next } = await pageOfRows(rows, page, 'newest-first');
+    const limit = Math.min(page.limit, MOST_RESULTS);
+    const { items, next } = await pageOfRows(rows, { ...page, limit }, 'newest-first');
     return { items: await toResults(manager, items), next };
   }
 
