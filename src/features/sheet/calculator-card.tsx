@@ -55,7 +55,7 @@ export function CalculatorCard({ card, definition }: { card: Card; definition: C
           </Menu>
         </div>
       </div>
-      {run.kind === 'running' && <RunProgressLine progress={run.progress} onStop={cardState.stop} />}
+      {run.kind === 'running' && <RunProgressLine progress={run.progress} />}
       {run.kind === 'failed' && <ErrorBar error={run.error} />}
       {cardState.keepError && <ErrorBar error={cardState.keepError} />}
       {output?.summary && <p className="max-w-prose text-read">{output.summary}</p>}

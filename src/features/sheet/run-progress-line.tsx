@@ -1,12 +1,11 @@
 import { useEffect, useState } from 'react';
 import { text } from '../../../shared/text.js';
-import { Button } from '../../components/button.js';
 import type { RunProgress } from './use-calculator-run.js';
 
 const QUIET_MS = 300;
 
-/** Nothing for 300 ms, then how far the work is, what is in hand, and Stop. */
-export function RunProgressLine({ progress, onStop }: { progress: RunProgress; onStop: () => void }) {
+/** Nothing for 300 ms, then how far the work is and what is in hand. */
+export function RunProgressLine({ progress }: { progress: RunProgress }) {
   const [isShown, setIsShown] = useState(false);
   useEffect(() => {
     const timer = setTimeout(() => setIsShown(true), QUIET_MS);
@@ -20,7 +19,6 @@ export function RunProgressLine({ progress, onStop }: { progress: RunProgress; o
       <span className="font-num text-note">
         {text.sheet.results.progress(done, total)} {label}
       </span>
-      <Button onClick={onStop}>{text.sheet.results.stop}</Button>
     </div>
   );
 }
