@@ -6,6 +6,7 @@ import { type CoilModel, coilParameters, NO_SHUNT } from './voice-coil.js';
 export interface CoilRemainder {
   readonly coilGrid: FrequencyGrid;
   readonly coilOhm: ComplexArray;
+  readonly inductiveOhm: ComplexArray; // as a coil without losses would have it; differs only where there is no phase
   readonly coilWeight: Float64Array; // 1/|Z|
 }
 
@@ -22,12 +23,12 @@ export function coilStart(model: CoilModel, remainder: CoilRemainder): number[] 
 }
 
 const START: Readonly<Record<CoilModel, (remainder: CoilRemainder) => number[]>> = {
-  inductor: ({ coilGrid: { omega }, coilOhm, coilWeight }) => {
+  inductor: ({ coilGrid: { omega }, inductiveOhm, coilWeight }) => {
     let top = 0;
     let bottom = 0;
     for (let i = 0; i < omega.length; i++) {
       const w2 = coilWeight[i]! * coilWeight[i]!;
-      top += w2 * omega[i]! * coilOhm.im[i]!;
+      top += w2 * omega[i]! * inductiveOhm.im[i]!;
       bottom += w2 * omega[i]! * omega[i]!;
     }
     return [top / bottom];
@@ -42,17 +43,18 @@ const START: Readonly<Record<CoilModel, (remainder: CoilRemainder) => number[]>>
   'split-power-law': (remainder) => {
     const [kr, xr] = powerLine(remainder, remainder.coilOhm.re);
     const [ki, xi] = powerLine(remainder, remainder.coilOhm.im);
-    return [kr, Math.min(Math.max(xr, 0.2), 1.8), ki, Math.min(Math.max(xi, 0.3), 1)];
+    const tilt = remainder.inductiveOhm === remainder.coilOhm ? 0 : 0.1; // losses rise faster than reactance, as a rule
+    return [kr, Math.min(Math.max(xr + tilt, 0.2), 1.8), ki, Math.min(Math.max(xi - tilt, 0.3), 1)];
   },
   'inductor+eddy': (remainder) => {
-    const { l1, second, corner } = bestCorner(remainder, (w, corner) => {
+    const { l1, second, corner } = bestCorner(remainder, remainder.inductiveOhm, (w, corner) => {
       const t = w / corner; // second amplitude R2: jt/(1 + jt)
       return [(t * t) / (1 + t * t), t / (1 + t * t)];
     });
     return [l1, second / corner, second];
   },
   'semi-inductance': (remainder) => {
-    const { l1, second, corner } = bestCorner(remainder, (w, corner) => {
+    const { l1, second, corner } = bestCorner(remainder, remainder.coilOhm, (w, corner) => {
       const yRe = Math.SQRT1_2 / Math.sqrt(w); // second amplitude K: 1/(√corner/(jω) + 1/√(jω))
       const yIm = -Math.SQRT1_2 / Math.sqrt(w) - Math.sqrt(corner) / w;
       const size = 1 / (yRe * yRe + yIm * yIm);
@@ -95,7 +97,8 @@ function powerLine({ coilGrid: { logOmegaRatio }, coilWeight }: CoilRemainder, p
 
 /** For each corner, the best non-negative pair (L1, second amplitude) of Z = jωL1 + second·shape; the best of all. */
 function bestCorner(
-  { coilGrid: { omega }, coilOhm, coilWeight }: CoilRemainder,
+  { coilGrid: { omega }, coilWeight }: CoilRemainder,
+  coilOhm: ComplexArray,
   shape: (w: number, corner: number) => [number, number],
 ) {
   const low = omega[0]!;

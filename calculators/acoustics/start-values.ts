@@ -18,6 +18,7 @@ export interface MotionalStart {
   /** Z − Re − motional part above the peak, thinned: what the coil has to explain. */
   readonly coilGrid: FrequencyGrid;
   readonly coilOhm: ComplexArray;
+  readonly inductiveOhm: ComplexArray; // the same; without phase, as it would be for a coil without losses
   readonly coilWeight: Float64Array; // 1/|Z|
 }
 
@@ -143,7 +144,10 @@ function resistanceAtLowEnd(
   return left.length > 0 ? left[left.length >> 1]! : reOhm;
 }
 
-/** Z − Re − motional part at up to 60 points above the peak. Without phase, what |Z| has above Re counts as reactance. */
+/**
+ * Z − Re − motional part at up to 60 points above the peak. Without phase, the coil's part is taken to stand at 60°, about where
+ * the lossy coils of real drivers are, or at 90°: its size follows from |Z|.
+ */
 function coilRemainder(data: SweepData, fsHz: number, reOhm: number, qms: number, qes: number) {
   const { frequencyHz } = data.grid;
   const indices: number[] = [];
@@ -155,6 +159,7 @@ function coilRemainder(data: SweepData, fsHz: number, reOhm: number, qms: number
   const every = Math.max(1, Math.ceil(indices.length / 60));
   const chosen = indices.filter((_, k) => k % every === 0);
   const coilOhm = complexArray(chosen.length);
+  const inductiveOhm = data.hasPhase ? coilOhm : complexArray(chosen.length);
   const coilWeight = new Float64Array(chosen.length);
   chosen.forEach((i, k) => {
     const x = frequencyHz[i]! / fsHz;
@@ -162,11 +167,23 @@ function coilRemainder(data: SweepData, fsHz: number, reOhm: number, qms: number
     const size = reOhm / (qes * (1 / (qms * qms) + b * b));
     const rest = reOhm + size / qms;
     const magnitude = Math.exp(data.logMagnitude[i]!);
-    coilOhm.re[k] = data.hasPhase ? data.re[i]! - rest : 0;
-    const reactance = data.hasPhase ? data.im[i]! : Math.sqrt(Math.max(magnitude * magnitude - rest * rest, 0));
-    coilOhm.im[k] = reactance + size * b;
     coilWeight[k] = 1 / magnitude;
+    if (data.hasPhase) {
+      coilOhm.re[k] = data.re[i]! - rest;
+      coilOhm.im[k] = data.im[i]! + size * b;
+      return;
+    }
+    for (const [target, cos, sin] of [
+      [coilOhm, 0.5, Math.sqrt(0.75)],
+      [inductiveOhm, 0, 1],
+    ] as const) {
+      const along = cos * rest - sin * size * b; // |rest − j·size·b + r·e^{jθ}| = |Z| solved for r
+      const square = magnitude * magnitude - rest * rest - size * size * b * b + along * along;
+      const r = Math.max(Math.sqrt(Math.max(square, 0)) - along, 0);
+      target.re[k] = r * cos;
+      target.im[k] = r * sin;
+    }
   });
   const coilGrid = frequencyGrid(Float64Array.from(chosen, (i) => frequencyHz[i]!));
-  return { coilGrid, coilOhm, coilWeight };
+  return { coilGrid, coilOhm, inductiveOhm, coilWeight };
 }

@@ -13,6 +13,7 @@ import { type Evaluation, FusedEvaluation, ResidualEvaluation } from './problem-
 
 const MOST_REFUSALS = 40; // in one iteration
 const LOOSE_OFFSET = 1e-3; // Bates and Watts' own limit: the confidence region is known to 0.1 % of its size
+const ORTHOGONAL = 1e-6; // cosine
 const MOST_POLISHING = 60;
 const COST_ROUNDING = 1e-8; // relative; far above the rounding of any sum of squares met in practice
 const LOG_STEP = 1.5; // largest change of a logarithm in one iteration: a factor of 4.5
@@ -112,7 +113,7 @@ class Iteration {
       if (!this.advance()) {
         if (this.evaluation.sharpen(this.values)) continue;
         this.polish();
-        return this.offset < LOOSE_OFFSET ? this.finalStatus('converged') : 'stalled';
+        return this.offset < LOOSE_OFFSET || this.isOrthogonal() ? this.finalStatus('converged') : 'stalled';
       }
     }
   }
@@ -269,6 +270,16 @@ class Iteration {
       if (this.trial[k] !== value) moved = true;
     }
     return moved;
+  }
+
+  /** The residual is at right angles to every column: nothing to gain, even where the columns depend on each other. */
+  private isOrthogonal(): boolean {
+    const { gradient, hessian, cost } = this.evaluation.sums;
+    for (let k = 0; k < this.p; k++) {
+      const limit = ORTHOGONAL * Math.sqrt(2 * cost * hessian[k * this.p + k]!);
+      if (this.active[k] && !(Math.abs(gradient[k]!) <= limit)) return false;
+    }
+    return true;
   }
 
   private finalStatus(status: FitStatus): FitStatus {
