@@ -60,6 +60,7 @@ export const errors = {
   offlineDetail: 'The server could not be reached. Check the connection, then try again; nothing was changed.',
   oddAnswerDetail: 'The page may be older than the server. Load it again; your work is kept on the server.',
   stoppedDetail: 'The work was stopped. Nothing was stored.',
+  editedTwice: (theirs: string) => `It now reads “${theirs}”. Save again to keep yours.`,
   unknownTitle: 'Something went wrong on this page',
   unknownDetail: 'Load the page again. If it comes back, send us the details with the reference.',
   workerTitle: 'The calculation ended early',

@@ -1,6 +1,7 @@
 import { InputError } from '../../shared/errors.js';
 import { text } from '../../shared/text.js';
 import { ApiError } from './api-error.js';
+import { EditConflict } from './project-store/project-store.js';
 
 export interface ErrorWords {
   title: string;
@@ -21,6 +22,11 @@ export function errorWords(error: unknown): ErrorWords {
       requestId: error.requestId,
       technical: `${error.code} ${error.status}\n${technical}`,
     };
+  }
+  if (error instanceof EditConflict) {
+    const theirs = error.fields.map((field) => String((error.theirs as Record<string, unknown>)[field]));
+    const detail = text.errors.editedTwice(theirs.join(', '));
+    return { title: text.errors.titles['version-conflict'], detail, requestId: '', technical };
   }
   if (error instanceof InputError) {
     return { title: text.errors.refusedFiles[error.code], detail: error.message, requestId: '', technical };

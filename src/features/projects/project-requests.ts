@@ -23,10 +23,10 @@ export function useUpdateProject() {
       mergeEdit(
         seen,
         change,
-        (version) => api.patch(`/projects/${seen.id}`, change, ProjectSchema, { version }),
+        (version, edited) => api.patch(`/projects/${seen.id}`, edited, ProjectSchema, { version }),
         () => api.get(`/projects/${seen.id}`, ProjectSchema),
       ),
-    onSuccess: () => client.invalidateQueries({ queryKey: ['projects'] }),
+    onSettled: () => client.invalidateQueries({ queryKey: ['projects'] }),
   });
 }
 

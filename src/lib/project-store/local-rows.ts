@@ -59,7 +59,7 @@ export function localRows<Row extends LocalRow, Create, Update extends object>(
       mergeEdit(
         seen,
         change,
-        (version) => updateVersion(seen.id, version, change),
+        (version, edit) => updateVersion(seen.id, version, edit),
         () => get(seen.id),
       ),
     delete: async ({ id }) => {

@@ -58,7 +58,7 @@ function serverRows<Row extends Versioned, Create, Update extends object>(at: Ro
       mergeEdit(
         seen,
         change,
-        (version) => api.patch(one(seen.id), change, at.row, { version }),
+        (version, edited) => api.patch(one(seen.id), edited, at.row, { version }),
         () => api.get(one(seen.id), at.row),
       ),
     delete: (seen) => api.delete(one(seen.id), { version: seen.version }),

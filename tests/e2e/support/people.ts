@@ -1,4 +1,4 @@
-import { readdirSync, readFileSync } from 'node:fs';
+import { readdir, readFile } from 'node:fs/promises';
 import { join } from 'node:path';
 import { expect, type Page } from '@playwright/test';
 
@@ -9,58 +9,50 @@ export interface Person {
 }
 let count = 0;
 
-export function newPerson(name = 'Ivo Lindqvist'): Person {
+/** Somebody new; every test works with people and teams of its own. */
+export function newPerson(name = 'Ines Brook'): Person {
   count += 1;
-  return {
-    name,
-    email: `person-${process.pid}-${Date.now()}-${count}@hillside.example`,
-    password: 'lichen-and-heather-7',
-  };
+  return { name, email: `person-${process.pid}-${Date.now()}-${count}@example.org`, password: 'spruce and heather' };
 }
 
-/** The path of the newest letter's link to this address, as the mail sink kept it. Waits for the letter. */
-export async function linkFromLetter(email: string): Promise<string> {
+/** The link in the newest letter to this address; waits for the letter. `kind` is the first part of the link's path. */
+export async function linkInLetter(email: string, kind: 'verify' | 'reset'): Promise<string> {
   const folder = process.env.HUMMOCK_E2E_MAIL ?? '';
-  let link = '';
+  let link: string | undefined;
   await expect(async () => {
-    const letters = readdirSync(folder).filter((file) => file.includes(email));
-    const newest = letters.sort().at(-1);
-    const written = newest
-      ? readFileSync(join(folder, newest), 'utf8')
-          .replace(/=\r?\n/g, '')
-          .replace(/=3D/g, '=')
-      : '';
-    const found = /https?:\/\/[^\s"<>]+/.exec(written)?.[0];
-    expect(found, `a letter to ${email} with a link`).toBeTruthy();
-    link = new URL(found ?? '').pathname;
-  }).toPass({ timeout: 15_000 });
-  return link;
+    for (const name of (await readdir(folder)).sort().reverse()) {
+      const letter = (await readFile(join(folder, name), 'utf8')).replaceAll(/=\r?\n/g, '').replaceAll('=3D', '=');
+      if (!letter.includes(email)) continue;
+      link = new RegExp(`https?://[^\\s"<>]*/${kind}/[^\\s"<>]+`).exec(letter)?.[0];
+      if (link) break;
+    }
+    expect(link, `a letter to ${email}`).toBeTruthy();
+  }).toPass({ timeout: 20_000 });
+  return link ?? '';
 }
 
-/** Makes an account by the API, verifies it by its letter, and leaves the page signed in. */
-export async function signedInPerson(page: Page, person: Person = newPerson()): Promise<Person> {
-  await page.goto('/sign-in');
-  const origin = new URL(page.url()).origin;
-  const answer = await page.request.post('/api/account/register', {
-    data: { email: person.email, password: person.password, name: person.name },
-    headers: { origin },
-  });
-  expect(answer.status(), await answer.text()).toBe(202);
-  const code = (await linkFromLetter(person.email)).split('/').at(-1);
-  const verified = await page.request.post('/api/account/verify', { data: { code }, headers: { origin } });
-  expect(verified.status(), await verified.text()).toBe(200);
-  await page.evaluate(() => localStorage.setItem('hummock.signed-in', 'yes'));
+/** A registered, confirmed and signed-in person, without going through the forms. */
+export async function signedIn(page: Page, person = newPerson()): Promise<Person> {
+  const { name, email, password } = person;
+  const base = new URL(process.env.HUMMOCK_E2E_URL ?? '');
+  const options = { headers: { origin: base.origin } };
+  const registered = await page.request.post('/api/account/register', { ...options, data: { name, email, password } });
+  expect(registered.ok()).toBe(true);
+  const code = (await linkInLetter(email, 'verify')).split('/').at(-1);
+  expect((await page.request.post('/api/account/verify', { ...options, data: { code } })).ok()).toBe(true);
+  expect((await page.request.post('/api/account/sign-in', { ...options, data: { email, password } })).ok()).toBe(true);
+  await page.addInitScript(() => localStorage.setItem('hummock.signed-in', 'yes'));
   return person;
 }
 
-/** A project of the person who is signed in on this page. */
-export async function newProject(page: Page, name = 'Rehearsal rooms'): Promise<string> {
-  const origin = new URL(page.url()).origin;
+/** A project of the signed-in person's own team; answers its path. */
+export async function newProject(page: Page, name = 'Monitors for room 3'): Promise<string> {
+  const { origin } = new URL(process.env.HUMMOCK_E2E_URL ?? '');
   const me = (await (await page.request.get('/api/me')).json()) as { teams: { id: string }[] };
-  const answer = await page.request.post(`/api/teams/${me.teams[0]?.id}/projects`, {
-    data: { name },
+  const made = await page.request.post(`/api/teams/${me.teams[0]?.id}/projects`, {
     headers: { origin },
+    data: { name },
   });
-  expect(answer.status(), await answer.text()).toBe(201);
-  return ((await answer.json()) as { id: string }).id;
+  expect(made.ok()).toBe(true);
+  return `/p/${((await made.json()) as { id: string }).id}`;
 }
