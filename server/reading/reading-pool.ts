@@ -1,3 +1,4 @@
+import { once } from 'node:events';
 import { availableParallelism } from 'node:os';
 import { Worker } from 'node:worker_threads';
 import { AppError, InputError } from '../../shared/errors.js';
@@ -77,23 +78,26 @@ export class ReadingPool {
     const reply = await this.ask(worker, job.request);
     if (reply.ok) return reply.read;
     if ('refusal' in reply) throw new InputError(reply.refusal.code, reply.refusal.message, reply.refusal.where);
-    throw new AppError('internal-error', text.measurements.readingBroke, {}, reply.crash);
+    throw broke(reply.crash);
   }
 
   private async start(): Promise<Worker> {
     const { entry, isText } = await this.options.source();
+    if (this.isClosed) throw new AppError('not-ready', text.measurements.readersBusy);
     const worker = new Worker(entry, {
       eval: isText,
       resourceLimits: { maxOldGenerationSizeMb: this.options.memoryMb },
       env: {}, // it needs nothing of the server's environment
     });
     this.all.add(worker);
-    worker.unref();
     worker.once('exit', () => {
       this.all.delete(worker);
       const at = this.idle.indexOf(worker);
       if (at >= 0) this.idle.splice(at, 1);
     });
+    const ended = once(worker, 'exit').then(() => Promise.reject(broke()));
+    await Promise.race([once(worker, 'online'), ended]); // both reject when the thread cannot begin
+    worker.unref();
     return worker;
   }
 
@@ -112,7 +116,7 @@ export class ReadingPool {
           resolve(reply);
         });
       const onError = (error: Error & { code?: string }) => settle(() => reject(this.endOf(error, request.fileName)));
-      const onExit = () => settle(() => reject(new AppError('internal-error', text.measurements.readingBroke)));
+      const onExit = () => settle(() => reject(broke()));
       const timer = setTimeout(() => {
         settle(() => {
           const seconds = Math.round(this.options.timeLimitMs / 1000);
@@ -129,6 +133,10 @@ export class ReadingPool {
   private endOf(error: Error & { code?: string }, fileName: string): Error {
     if (error.code === 'ERR_WORKER_OUT_OF_MEMORY')
       return new InputError('file-too-large', text.measurements.readingTooMuchMemory, fileName);
-    return new AppError('internal-error', text.measurements.readingBroke, {}, error);
+    return broke(error);
   }
+}
+
+function broke(cause?: unknown): AppError {
+  return new AppError('internal-error', text.measurements.readingBroke, {}, cause);
 }

@@ -200,7 +200,7 @@ it('keeps nothing of an upload whose sender goes away', async () => {
     duplex: 'half',
   } as RequestInit);
   await expect(sending).rejects.toThrow();
-  await expect.poll(temporaryFiles).toEqual([]);
+  await expect.poll(temporaryFiles, { timeout: 15_000 }).toEqual([]);
   expect(await rowsIn('sweep')).toBe(before);
 });
 
