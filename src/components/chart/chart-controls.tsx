@@ -1,5 +1,5 @@
 import { ArrowLeft, ArrowRight, Minus, Plus, Undo2, X } from 'lucide-react';
-import { type ReactNode, useId, useState } from 'react';
+import { type FocusEvent, type ReactNode, useId, useState } from 'react';
 import type { CursorName } from '../../../shared/drawing/marks/cursors.js';
 import { parseQuantity } from '../../../shared/quantity-parse.js';
 import { formatDigits, formatPlain } from '../../../shared/quantity-text.js';
@@ -137,11 +137,13 @@ function RangeFields({ view, locale }: { view: ChartView; locale: string | undef
         if (event.key === 'Enter') take();
         if (event.key === 'Escape') setTyped(null);
       }}
-      onBlur={take}
     />
   );
+  const leave = (event: FocusEvent<HTMLElement>) => {
+    if (!event.currentTarget.contains(event.relatedTarget)) take(); // not between the two fields: both may be typed first
+  };
   return (
-    <fieldset className="chart-row" aria-label={words.range}>
+    <fieldset className="chart-row" aria-label={words.range} onBlur={leave}>
       {field('from', words.fromField, shown[0] ?? '')}
       <span aria-hidden>–</span>
       {field('to', words.toField, shown[1] ?? '')}

@@ -66,8 +66,8 @@ function Page() {
         onReference={() => say('reference')}
         {...(asked.has('locale') ? { locale: asked.get('locale') ?? 'en' } : {})}
       />
-      <output data-testid="state">{JSON.stringify(state)}</output>
-      <output data-testid="log">{log.join(',')}</output>
+      <pre data-testid="state">{JSON.stringify(state)}</pre>
+      <pre data-testid="log">{log.join(',')}</pre>
       {asked.has('tall') && <div style={{ height: 2000 }} />}
     </main>
   );

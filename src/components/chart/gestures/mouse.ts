@@ -58,6 +58,7 @@ export function attachMouse(options: GestureOptions): () => void {
     const point = localPoint(root, event);
     if (targetAt(view, point).kind !== 'plot') return;
     event.preventDefault();
+    if (event instanceof PointerEvent && event.pointerType === 'touch') return; // a long press: touch.ts holds the cursor
     options.onMenu(snapped(view, hzAt(view, point.x)), point);
   };
   const listeners: [string, EventListener][] = [

@@ -33,6 +33,7 @@ interface Finger {
   readonly start: LocalPoint;
   readonly holdsCursor: boolean;
   readonly offsetX: number;
+  readonly isLongPress?: boolean;
 }
 
 export function attachTouch(options: GestureOptions): () => void {
@@ -128,7 +129,9 @@ class TouchGesture {
     if (finger.holdsCursor) {
       this.view.store.settle({}, 'cursor');
       this.options.onCursorMoved();
-      if (!this.hasMoved && isWorkshop()) this.tap(finger.start);
+      if (this.hasMoved) return;
+      if (finger.isLongPress) this.options.onMenu(snapped(this.view, hzAt(this.view, finger.start.x)), finger.start);
+      else if (isWorkshop()) this.tap(finger.start);
     } else if (!this.hasMoved) this.tap(finger.start);
   }
 
@@ -152,7 +155,7 @@ class TouchGesture {
       if (Math.abs(this.pxOf(cursorHz(state, 'A') ?? 0) - point.x) > FINGER_PX * 3) store.chooseCursor('B');
     }
     placeCursor(this.view, store.getChosenCursor(), snapped(this.view, hzAt(this.view, point.x)), false);
-    this.finger = { start: point, holdsCursor: true, offsetX: 0 };
+    this.finger = { start: point, holdsCursor: true, offsetX: 0, isLongPress: true };
     navigator.vibrate?.(8);
   }
   private pxOf(hz: number): number {
