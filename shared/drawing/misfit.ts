@@ -34,7 +34,7 @@ export function drawMisfit(input: MisfitInput): Primitive[] {
   const frequency = axisScale('log', frequencyFit(spanOf(lines)), frame.x, frame.x + frame.width);
   const options = locale ? { locale } : {};
   const items: Primitive[] = [];
-  for (const tick of ticksOf(value, { labelGapPx: 26, ...options })) {
+  for (const tick of ticksOf(value, { labelGapPx: 18, ...options })) {
     const y = Math.round(tick.px) + 0.5;
     const color = tick.value === 0 ? theme.edge : tick.label ? theme.gridStrong : theme.grid;
     items.push({ kind: 'line', x1: frame.x, y1: y, x2: frame.x + frame.width, y2: y, stroke: { color, width: 1 } });

@@ -1,3 +1,4 @@
+import { displayUnit } from '../../quantities.js';
 import { formatDecimals, formatQuantity } from '../../quantity-text.js';
 import { chart } from '../../text/chart.js';
 import { activeSweep, type ChartInput } from '../chart-input.js';
@@ -26,15 +27,22 @@ export function flagLines(cursorHz: number, value: ReadoutValue | null, input: C
   const frequency = formatQuantity(cursorHz, 'Hz', { locale });
   if (!value) return [frequency, '–'];
   if (input.state.view !== 'magnitude-phase' && value.realOhm !== undefined) {
-    const imaginary = formatQuantity(value.imaginaryOhm ?? 0, 'Ω', { locale, digits: 3 });
-    const parts = `${formatQuantity(value.realOhm, 'Ω', { locale, digits: 3 })} ${imaginary.startsWith('−') ? '' : '+'}j${imaginary}`;
-    return [frequency, parts.replace('+j', '+ j').replace(/ j\u2212/, ' \u2212 j')];
+    return [frequency, complexText(value.realOhm, value.imaginaryOhm ?? 0, locale)];
   }
   const magnitude = formatQuantity(value.magnitudeOhm, 'Ω', { locale });
   return [
     frequency,
     value.phaseDeg === undefined ? magnitude : `${magnitude} ${signedDegrees(value.phaseDeg, locale)}`,
   ];
+}
+/** `46.3 + j0.1 Ω`: both parts in one unit and to one place, three digits of the greater. */
+function complexText(realOhm: number, imaginaryOhm: number, locale?: string): string {
+  const size = Math.hypot(realOhm, imaginaryOhm);
+  const unit = displayUnit(size, 'Ω');
+  const places = Math.max(0, 2 - Math.floor(Math.log10(size / unit.factor || 1)));
+  const part = (ohm: number) => formatDecimals(ohm / unit.factor, places, locale);
+  const sign = imaginaryOhm < 0 ? '\u2212' : '+';
+  return `${part(realOhm)} ${sign} j${part(Math.abs(imaginaryOhm))}\u00A0${unit.symbol}`;
 }
 export function signedDegrees(deg: number, locale?: string): string {
   const text = formatDecimals(deg, 1, locale);
