@@ -89,7 +89,7 @@ function fitTogether(
   const { context, choices } = options;
   const checkpoint = (): void => context.checkpoint();
   const sweeps = singles.map(
-    (alone): FitSweep => ({ measured: alone.measured, rows: alone.rows, noise: alone.noise, alone }),
+    (alone): FitSweep => ({ measured: alone.measured, rows: alone.rows, noise: alone.noise, alone, misfitSquares: 0 }),
   );
   const plain: JointShape = { boxKind: 'sealed', isBoxMassFree: false, hasOwnRe: hasOtherRe(singles) };
   const leader = singles[0]?.choice ?? choices[0];
@@ -109,8 +109,8 @@ function fitTogether(
   const structures = sweeps.map((sweep, i) => structureOf(sweep, i, first.candidate));
   const effectiveRows = effectiveCount(sweeps, structures);
   const ranking = ranked(candidates, effectiveRows);
-  const noises = sweeps.map((sweep, i) => noiseOf(sweep, i, first.candidate, structures[i]));
-  const finalSetup = { ...setup, sweeps: sweeps.map((sweep, i) => ({ ...sweep, noise: noises[i] ?? sweep.noise })) };
+  const judged = sweeps.map((sweep, i) => withNoise(sweep, i, first.candidate, structures[i]));
+  const finalSetup = { ...setup, sweeps: judged };
   const outcomes = ranking
     .filter(({ weight }, i) => i === 0 || weight > LEAST_WEIGHT)
     .map(({ candidate, weight }): Outcome => {
@@ -144,18 +144,19 @@ function effectiveCount(sweeps: readonly FitSweep[], structures: readonly Residu
   return Math.max(total, 24);
 }
 
-/** σ of one component of one point, as this model leaves it, stretched by √τ where the misfit is correlated. */
-function noiseOf(
+/** With σ of one component of one point as this model leaves it, stretched by √τ where the misfit is correlated. */
+function withNoise(
   sweep: FitSweep,
   place: number,
   candidate: Candidate<JointDriverProblem>,
   structure: ResidualStructure | undefined,
-): number {
+): FitSweep {
   const { re, im } = misfitOf(sweep, place, candidate);
   const { counts } = sweep.rows;
   const squares = counts.reduce((sum, count, i) => sum + count * ((re[i] ?? 0) ** 2 + (im[i] ?? 0) ** 2), 0);
   const rows = rowsOf(sweep);
   const share = (candidate.freeParameters * rows) / (candidate.problem.activeCount ?? rows);
   const sigma = Math.sqrt(squares / Math.max(rows - share, 1));
-  return Math.max(sigma, 1e-9) * Math.sqrt(structure?.pointsPerEffective ?? 1);
+  const noise = Math.max(sigma, 1e-9) * Math.sqrt(structure?.pointsPerEffective ?? 1);
+  return { ...sweep, noise, misfitSquares: squares };
 }

@@ -7,6 +7,7 @@ import { COILS, type DriverFitSettings, SUSPENSIONS } from './settings.js';
 export interface ModelChoice {
   readonly coil: CoilModel;
   readonly suspension: SuspensionModel;
+  readonly hasRss: boolean; // the optional shunt resistance of semi-inductance
 }
 /** One model, fitted, with what it takes to compare it with the others on the same data and weights. */
 export interface Candidate<Problem extends LeastSquaresProblem = LeastSquaresProblem> extends ModelChoice {
@@ -27,21 +28,33 @@ export interface Ranked<C extends Candidate> {
 export function modelChoices({ coil, suspension }: Pick<DriverFitSettings, 'coil' | 'suspension'>): ModelChoice[] {
   const coils = coil === 'auto' ? COILS : [coil];
   const suspensions = suspension === 'auto' ? SUSPENSIONS : [suspension];
-  return suspensions.flatMap((s) => coils.map((c) => ({ coil: c, suspension: s })));
+  return suspensions.flatMap((law) =>
+    coils.flatMap((model) => {
+      const plain = { coil: model, suspension: law, hasRss: false };
+      return model === 'semi-inductance' ? [plain, { ...plain, hasRss: true }] : [plain];
+    }),
+  );
 }
 
-export const modelName = ({ coil, suspension }: ModelChoice): string => `${coil} · ${suspension}`;
+export const coilName = ({ coil, hasRss }: ModelChoice): string => (hasRss ? `${coil} with Rss` : coil);
+export const modelName = (choice: ModelChoice): string => `${coilName(choice)} · ${choice.suspension}`;
 
 const FASTEST_RELAXATION = 2; // times fs: faster ones cannot be told from a stiffer spring
 const LARGEST_KAPPA = 4;
 const SLOWEST_RELAXATION = 0.01; // times fs
 
 /**
- * The problem with the relaxation kept where a sweep can tell it: between 0.01 and 2 times fs (common practice from
- * trials, no published source). Outside it only trades off with Cms.
+ * The problem of one model: Rss held at infinity where the choice leaves it out, and the relaxation kept where a sweep can
+ * tell it, between 0.01 and 2 times fs (common practice from trials, no published source): outside it only trades off
+ * with Cms.
  */
-export function withinReach<Problem extends LeastSquaresProblem>(problem: Problem, fsHz: number): Problem {
+export function withinReach<Problem extends LeastSquaresProblem>(
+  problem: Problem,
+  { hasRss }: ModelChoice,
+  fsHz: number,
+): Problem {
   const bounded = (parameter: FitParameter): FitParameter => {
+    if (parameter.id === 'Gss' && !hasRss) return { ...parameter, lower: 0, held: true };
     if (parameter.id === 'kappa') return { ...parameter, lower: 1e-3, upper: LARGEST_KAPPA };
     if (parameter.id !== 'tau') return parameter;
     const tauOf = (ratio: number): number => 1 / (2 * Math.PI * ratio * fsHz);
@@ -57,10 +70,18 @@ export function fitCandidate<Problem extends LeastSquaresProblem>(
   start: ArrayLike<number>,
   checkpoint: () => void,
 ): Candidate<Problem> {
-  const fit = leastSquares(problem, start, { relativeOffset: 1e-3, maxIterations: 40, covariance: false, checkpoint });
+  const first = withoutHeld(problem, start);
+  const fit = leastSquares(problem, first, { relativeOffset: 1e-3, maxIterations: 40, covariance: false, checkpoint });
   const idle = new Set([...fit.atBound, ...fit.neverMoved]);
-  return { ...choice, problem, fit, freeParameters: fit.values.length - idle.size, squares: 2 * fit.cost };
+  return { ...choice, problem, fit, freeParameters: countOf(problem) - idle.size, squares: 2 * fit.cost };
 }
+
+/** A start in which everything held has the value it is held at: 0, no shunt. */
+export function withoutHeld({ parameters }: LeastSquaresProblem, start: ArrayLike<number>): Float64Array {
+  return Float64Array.from(start, (value, k) => (parameters[k]?.held ? 0 : value));
+}
+
+const countOf = ({ parameters }: LeastSquaresProblem): number => parameters.filter(({ held }) => !held).length;
 
 const SAME_BIC = 1.5;
 
@@ -82,7 +103,7 @@ export function ranked<C extends Candidate>(candidates: readonly C[], rows: numb
       sameAs: null as string | null,
     };
   });
-  const simplestFirst = [...scored].sort((a, b) => a.candidate.fit.values.length - b.candidate.fit.values.length);
+  const simplestFirst = [...scored].sort((a, b) => countOf(a.candidate.problem) - countOf(b.candidate.problem));
   for (const entry of simplestFirst) {
     const simpler = scored.find((other) => isSimplerTwin(other, entry));
     if (simpler) entry.sameAs = modelName(simpler.candidate);
@@ -98,9 +119,9 @@ export function ranked<C extends Candidate>(candidates: readonly C[], rows: numb
 type Scored = { readonly candidate: Candidate; readonly bic: number; readonly sameAs: string | null };
 
 function isSimplerTwin(other: Scored, entry: Scored): boolean {
-  const { fit } = entry.candidate;
+  const { fit, problem } = entry.candidate;
   if (other === entry || other.sameAs !== null) return false;
   if (fit.atBound.length + fit.neverMoved.length === 0) return false;
-  const isSimpler = other.candidate.fit.values.length < fit.values.length;
+  const isSimpler = countOf(other.candidate.problem) < countOf(problem);
   return isSimpler && other.bic <= entry.bic + SAME_BIC;
 }

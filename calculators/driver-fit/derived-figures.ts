@@ -15,6 +15,7 @@ export interface DriverNumbers {
   readonly speedOfSoundMPerS: number;
   readonly coilOhm: (frequencyHz: number) => { readonly re: number; readonly im: number };
   readonly squaredOhm: (lnF: number) => number; // |Z|² of the fitted curve
+  readonly definition: Readonly<Record<string, number>>; // by the three-point method on the fitted motional impedance
   readonly parameters: Readonly<Record<string, number | null>>; // of coil and suspension, by the id of their figure
 }
 export interface FigureContext {
@@ -27,6 +28,9 @@ export interface CurveExtremes {
   readonly least: Extreme;
 }
 export type FigureValues = Record<string, number | null>;
+
+/** Marks the value of a figure by the three-point definition, beside that of the model's parameter. */
+export const BY_DEFINITION = ':definition';
 
 const REFERENCE_PRESSURE_PA = 20e-6;
 const RATED_OHM = [2, 3, 4, 6, 8, 12, 16] as const;
@@ -67,6 +71,7 @@ export function figureValues(numbers: DriverNumbers, context: FigureContext, bef
     ...coilFigures(numbers, context),
     ...movingFigures(numbers, context),
     ...numbers.parameters,
+    ...Object.fromEntries(Object.entries(numbers.definition).map(([id, value]) => [id + BY_DEFINITION, value])),
   };
 }
 

@@ -1,6 +1,7 @@
 import { relativeCompliance, suspensionParameters } from '../acoustics/suspension.js';
 import { coilFigures } from '../acoustics/voice-coil.js';
 import type { Outcome } from './analysis.js';
+import { definitionFigures } from './definition-values.js';
 import type { DriverNumbers } from './derived-figures.js';
 import type { Externals } from './externals.js';
 import { pointImpedance } from './point-impedance.js';
@@ -29,50 +30,41 @@ export interface NumbersOf {
   readonly numbers: (values: Float64Array, shifts: ExternalShifts, shares: WayShares) => DriverNumbers;
 }
 
-export function numbersOf({ problem, choice }: Pick<Outcome, 'problem' | 'choice'>, externals: Externals): NumbersOf {
-  const at = new Map(problem.parameters.map(({ id }, k) => [id, k]));
-  const read = (values: Float64Array, id: string): number | null => {
-    const k = at.get(id);
-    return k === undefined ? null : (values[k] ?? null);
-  };
-  const alphaId = problem.parameters.find(({ id }) => /^alpha\d+$/.test(id))?.id ?? '';
-  const boxMassId = problem.parameters.find(({ id }) => /^mu\d+$/.test(id))?.id ?? '';
-  const point = pointImpedance(choice);
-  const told = (shifts: ExternalShifts) => toldWith(externals, shifts);
+interface Reader {
+  readonly read: (values: Float64Array, id: string) => number | null;
+  readonly alphaId: string; // of the test box; '' without one
+  readonly boxMassId: string;
+}
 
-  const lnMass: NumbersOf['lnMass'] = (values, shifts) => {
-    const { sdM2, stiffness, volumeM3, given } = told(shifts);
-    const [re, fs, , qes] = problem.localValues(0, values);
-    const omega = 2 * Math.PI * (fs ?? 1);
-    const mms = read(values, 'Mms');
-    const alpha = read(values, alphaId);
-    const ways: Partial<Record<MassWay, number>> = {};
-    if (mms !== null) ways['added-mass'] = Math.log(mms);
-    if (alpha !== null && sdM2 !== null && volumeM3 !== null) {
-      ways['known-volume'] = Math.log((stiffness * sdM2 * sdM2) / (omega * omega * alpha * volumeM3));
-    }
-    if (given) ways.given = Math.log(massFromGiven(given, omega, re ?? 1, qes ?? 1));
-    return ways;
+function readerOf({ parameters }: Outcome['problem']): Reader {
+  const at = new Map(parameters.map(({ id }, k) => [id, k]));
+  const named = (pattern: RegExp): string => parameters.find(({ id }) => pattern.test(id))?.id ?? '';
+  return {
+    read: (values, id) => {
+      const k = at.get(id);
+      return k === undefined ? null : (values[k] ?? null);
+    },
+    alphaId: named(/^alpha\d+$/),
+    boxMassId: named(/^mu\d+$/),
   };
-  const lnVas: NumbersOf['lnVas'] = (values, shifts) => {
-    const { sdM2, stiffness, volumeM3 } = told(shifts);
-    const omega = 2 * Math.PI * (problem.localValues(0, values)[1] ?? 1);
-    const ways: Partial<Record<MassWay, number>> = {};
-    const masses = lnMass(values, shifts);
-    for (const way of ['added-mass', 'given'] as const) {
-      const ln = masses[way];
-      if (ln !== undefined && sdM2 !== null) ways[way] = Math.log((stiffness * sdM2 * sdM2) / (omega * omega)) - ln;
-    }
-    const alpha = read(values, alphaId);
-    if (alpha !== null && volumeM3 !== null) ways['known-volume'] = Math.log(alpha * volumeM3);
-    return ways;
-  };
+}
+
+/** `heaviestKg`: the largest added mass, null without one. */
+export function numbersOf(
+  { problem, choice }: Pick<Outcome, 'problem' | 'choice'>,
+  externals: Externals,
+  heaviestKg: number | null,
+): NumbersOf {
+  const reader = readerOf(problem);
+  const { read, alphaId, boxMassId } = reader;
+  const ways = waysOf(problem, reader, externals);
+  const point = pointImpedance(choice);
   const numbers: NumbersOf['numbers'] = (values, shifts, shares) => {
-    const { sdM2, density, stiffness } = told(shifts);
+    const { sdM2, density, stiffness, volumeM3 } = toldWith(externals, shifts);
     const local = problem.localValues(0, values);
     const [reOhm = 1, fsHz = 1, qms = 1, qes = 1] = local;
-    const mmsKg = blended(lnMass(values, shifts), shares.mass);
-    const vasM3 = blended(lnVas(values, shifts), shares.vas);
+    const mmsKg = blended(ways.lnMass(values, shifts), shares.mass);
+    const vasM3 = blended(ways.lnVas(values, shifts), shares.vas);
     const alpha = read(values, alphaId);
     const boxMass = 1 + (read(values, boxMassId) ?? 0);
     return {
@@ -87,12 +79,54 @@ export function numbersOf({ problem, choice }: Pick<Outcome, 'problem' | 'choice
       fcHz: alpha === null ? null : fsHz * Math.sqrt((1 + alpha) / boxMass),
       densityKgPerM3: density,
       speedOfSoundMPerS: externals.speedOfSoundMPerS,
+      definition: definitionFigures(choice, local, {
+        massKg: heaviestKg,
+        mmsKg: read(values, 'Mms'),
+        alpha,
+        volumeM3,
+        stiffnessTimesArea: sdM2 === null ? null : stiffness * sdM2 * sdM2,
+      }),
       coilOhm: (frequencyHz) => point.coilOhm(local, frequencyHz),
       squaredOhm: (lnF) => point.squaredOhm(local, lnF),
       parameters: modelParameters(choice, local),
     };
   };
-  return { lnMass, lnVas, numbers };
+  return { ...ways, numbers };
+}
+
+function waysOf(
+  problem: Outcome['problem'],
+  { read, alphaId }: Reader,
+  externals: Externals,
+): Pick<NumbersOf, 'lnMass' | 'lnVas'> {
+  const lnMass: NumbersOf['lnMass'] = (values, shifts) => {
+    const { sdM2, stiffness, volumeM3, given } = toldWith(externals, shifts);
+    const [re, fs, , qes] = problem.localValues(0, values);
+    const omega = 2 * Math.PI * (fs ?? 1);
+    const mms = read(values, 'Mms');
+    const alpha = read(values, alphaId);
+    const ways: Partial<Record<MassWay, number>> = {};
+    if (mms !== null) ways['added-mass'] = Math.log(mms);
+    if (alpha !== null && sdM2 !== null && volumeM3 !== null) {
+      ways['known-volume'] = Math.log((stiffness * sdM2 * sdM2) / (omega * omega * alpha * volumeM3));
+    }
+    if (given) ways.given = Math.log(massFromGiven(given, omega, re ?? 1, qes ?? 1));
+    return ways;
+  };
+  const lnVas: NumbersOf['lnVas'] = (values, shifts) => {
+    const { sdM2, stiffness, volumeM3 } = toldWith(externals, shifts);
+    const omega = 2 * Math.PI * (problem.localValues(0, values)[1] ?? 1);
+    const ways: Partial<Record<MassWay, number>> = {};
+    const masses = lnMass(values, shifts);
+    for (const way of ['added-mass', 'given'] as const) {
+      const ln = masses[way];
+      if (ln !== undefined && sdM2 !== null) ways[way] = Math.log((stiffness * sdM2 * sdM2) / (omega * omega)) - ln;
+    }
+    const alpha = read(values, alphaId);
+    if (alpha !== null && volumeM3 !== null) ways['known-volume'] = Math.log(alpha * volumeM3);
+    return ways;
+  };
+  return { lnMass, lnVas };
 }
 
 function toldWith(externals: Externals, shifts: ExternalShifts) {

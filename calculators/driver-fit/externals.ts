@@ -1,3 +1,5 @@
+import { type AirConditions, airOf, USUAL_AIR } from '../acoustics/air.js';
+import type { Measured } from './measured.js';
 import type { DriverFitSettings, Mounting } from './settings.js';
 
 /** What is told beside the sweeps, in SI, each with its relative standard uncertainty (0: exact). */
@@ -29,6 +31,37 @@ export function externalUncertainty(externals: Externals, cause: ExternalCause):
     case 'given':
       return externals.given?.relative ?? 0;
   }
+}
+
+const UNTOLD_PRESSURE = 0.01; // relative: weather at sea level; a height of 500 m would be 6 %
+const TOLD_PRESSURE = 1e-3; // relative: a household barometer
+
+export function externalsOf(settings: DriverFitSettings, measured: readonly Measured[]): Externals {
+  const box = measured.find(({ volumeM3 }) => volumeM3 !== null);
+  const volumeM3 = box?.volumeM3 ?? null;
+  return {
+    ...pistonOf(settings),
+    ...airFrom(settings),
+    volumeM3,
+    volumeRelative: box && volumeM3 ? box.volumeUncertaintyM3 / volumeM3 : 0,
+    given: givenOf(settings),
+    airLoadDiscs: airLoadDiscsOf(settings.mounting),
+  };
+}
+
+type AirPart = Pick<Externals, 'densityKgPerM3' | 'speedOfSoundMPerS' | 'airRelative' | 'isAirTold'>;
+
+function airFrom({ air }: DriverFitSettings): AirPart {
+  if (air && 'density' in air) {
+    return { densityKgPerM3: air.density, speedOfSoundMPerS: air.speedOfSound, airRelative: 0, isAirTold: true };
+  }
+  const conditions: AirConditions = {
+    temperatureK: air?.temperature ?? USUAL_AIR.temperatureK,
+    pressurePa: air?.pressure ?? USUAL_AIR.pressurePa,
+    humidity: air?.humidity ?? USUAL_AIR.humidity,
+  };
+  const isAirTold = air?.pressure !== undefined;
+  return { ...airOf(conditions), airRelative: isAirTold ? TOLD_PRESSURE : UNTOLD_PRESSURE, isAirTold };
 }
 
 /** Piston area and its relative uncertainty: u(Sd)/Sd = 2·u(Dd)/Dd. */

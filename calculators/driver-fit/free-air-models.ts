@@ -1,7 +1,6 @@
 import { FREE_AIR } from '../acoustics/driver-impedance.js';
 import { driverSweepProblem } from '../acoustics/driver-sweep-problem.js';
 import type { SuspensionModel } from '../acoustics/suspension.js';
-import type { CoilModel } from '../acoustics/voice-coil.js';
 import type { RunContext } from '../kit/calculator.js';
 import { type Candidate, fitCandidate, type ModelChoice, modelName, ranked, withinReach } from './candidates.js';
 import { type FittedCurve, fitRows } from './fit-rows.js';
@@ -62,14 +61,25 @@ function fitAll(
     context.progress(i, choices.length, modelName(choice));
     context.checkpoint();
     const model = { ...choice, load: FREE_AIR };
-    const problem = withinReach(driverSweepProblem(model, rows.data, weights), rough.motional.fsHz);
-    const start = known.get(modelName(choice)) ?? firstStart(rough, choice.coil, choice.suspension);
+    const problem = withinReach(driverSweepProblem(model, rows.data, weights), choice, rough.motional.fsHz);
+    const start = known.get(modelName(choice)) ?? firstStart(rough, choice, rows.data.grid.omega.at(-1) ?? 1);
     return fitCandidate(choice, problem, start, () => context.checkpoint());
   });
 }
 
-function firstStart({ coils, motional }: RoughFit, coil: CoilModel, suspension: SuspensionModel): number[] {
-  return [...(coils.get(coil) ?? []), ...STARTS[suspension](motional.fsHz)];
+function firstStart(
+  { coils, motional }: RoughFit,
+  { coil, suspension, hasRss }: ModelChoice,
+  topOmega: number,
+): number[] {
+  const [re = 1, fs = 1, qms = 1, qes = 1, ...own] = coils.get(coil) ?? [];
+  const ownCoil = hasRss ? withRss(own, 2 * Math.PI * fs, topOmega) : own;
+  return [re, fs, qms, qes, ...ownCoil, ...STARTS[suspension](motional.fsHz)];
+}
+
+/** Leb Le K Gss: Rss at five times |K√(jω)| at the top of the sweep, Le where it begins to count within the sweep. */
+function withRss([leb = 1e-5, le = 1e-3, k = 0.05]: readonly number[], lowOmega: number, topOmega: number): number[] {
+  return [leb, Math.min(le, (3 * k) / Math.sqrt(lowOmega)), k, 0.2 / (k * Math.sqrt(topOmega))];
 }
 
 function byId(candidates: readonly Candidate[]): Map<string, Record<string, number>> {

@@ -1,14 +1,15 @@
-import type { Figure, Finding, Output } from '../../shared/output.js';
+import type { Output } from '../../shared/output.js';
 import { defineCalculator } from '../kit/calculator.js';
-import { magnitudeOf } from '../kit/sweep.js';
+import { externalsOf } from './externals.js';
 import { figureList } from './figure-list.js';
-import { curveKind } from './resonances.js';
+import { measuredSweeps } from './measured.js';
+import { fittedOutput } from './output.js';
 import { roles } from './roles.js';
 import { settingsSchema } from './settings.js';
-import { type ThreePoint, threePoint } from './three-point.js';
-import { threePointMarkers, threePointTable } from './three-point-table.js';
+import { curveFindings, isUsable } from './sweep-findings.js';
+import { unfittedOutput } from './unfitted-output.js';
 
-/** Thiele/Small parameters with their uncertainties from a free-air sweep and what else is known. */
+/** Thiele/Small parameters with their uncertainties, from a free-air sweep and whatever else is known of the driver. */
 export const driverFit = defineCalculator({
   id: 'driver-fit',
   version: 1,
@@ -21,32 +22,12 @@ export const driverFit = defineCalculator({
   settingsVersion: 1,
   migrate: {},
   figures: figureList,
-  run(inputs, settings): Output {
-    const sweep = inputs['free-air']?.[0]?.sweep;
-    if (!sweep) throw new Error('driver-fit ran without a free-air sweep');
-    const magnitude = magnitudeOf(sweep);
-    const kind = curveKind(sweep.frequencyHz, magnitude, sweep.imaginaryOhm);
-    const findings: Finding[] = [];
-    let result: ThreePoint | null = null;
-    if (kind.kind === 'driver') {
-      const re = settings.dcResistance ?? Math.min(...magnitude);
-      result = threePoint(sweep.frequencyHz, magnitude, re, kind.main.index);
-    }
-    const figure = (id: string, unit: string, value: number | undefined): Figure =>
-      value === undefined ? { id, unit, value: null, note: 'No resonance inside the sweep.' } : { id, unit, value };
-    return {
-      figures: [
-        figure('Re', 'Ω', result?.reOhm),
-        figure('fs', 'Hz', result?.fsHz),
-        figure('Qms', '1', result?.qms),
-        figure('Qes', '1', result?.qes),
-        figure('Qts', '1', result?.qts),
-        figure('Zmax', 'Ω', result?.zMaxOhm),
-      ],
-      traces: [],
-      markers: threePointMarkers(result),
-      findings,
-      tables: [threePointTable([{ sweep: sweep.name, role: roles['free-air'].label, result }])],
-    };
+  run(inputs, settings, context): Output {
+    const measured = measuredSweeps(inputs, settings);
+    const findings = curveFindings(measured);
+    const [free] = measured;
+    if (!free || !isUsable(free)) return unfittedOutput(free, findings);
+    const usable = measured.filter(isUsable);
+    return fittedOutput({ measured: usable, settings, externals: externalsOf(settings, usable), context }, findings);
   },
 });

@@ -6,7 +6,7 @@ import {
 } from '../acoustics/joint-driver-problem.js';
 import { leastSquares } from '../numerics/least-squares.js';
 import type { LeastSquaresFit } from '../numerics/least-squares-problem.js';
-import { type Candidate, fitCandidate, type ModelChoice, withinReach } from './candidates.js';
+import { type Candidate, fitCandidate, type ModelChoice, withinReach, withoutHeld } from './candidates.js';
 import type { FitRows } from './fit-rows.js';
 import type { Measured } from './measured.js';
 import type { SingleFit } from './single-fit.js';
@@ -17,6 +17,7 @@ export interface FitSweep {
   readonly rows: FitRows;
   readonly noise: number;
   readonly alone: SingleFit;
+  readonly misfitSquares: number; // Σ|ln(Z/model)|² over the points, of the model chosen
 }
 /** How the test box and Re enter: what is free beside the plain joint model. */
 export interface JointShape {
@@ -43,7 +44,7 @@ export function jointProblem(choice: ModelChoice, { sweeps, shape, priors }: Joi
     };
   });
   const problem = jointDriverProblem(choice.coil, choice.suspension, joint, priors);
-  return withinReach(problem, sweeps[0]?.alone.fsHz ?? 1);
+  return withinReach(problem, choice, sweeps[0]?.alone.fsHz ?? 1);
 }
 
 const USUAL_LEAK_Q = 30;
@@ -119,7 +120,7 @@ export function finalFit(
 ): { problem: JointDriverProblem; fit: LeastSquaresFit } {
   const problem = jointProblem(choice, setup);
   const values = problem.parameters.map(({ id }, k) => start[id] ?? jointStart(problem, start, setup)[k] ?? 1);
-  const fit = leastSquares(problem, values, {
+  const fit = leastSquares(problem, withoutHeld(problem, values), {
     relativeOffset: 1e-4,
     maxIterations: 60,
     absoluteSigma: true,

@@ -7,7 +7,7 @@ import type { DriverFitSettings } from './settings.js';
 
 export type Role = keyof typeof roles;
 
-/** One sweep as the fit sees it. Shapes (n): every curve of `data`, magnitudeOhm and keep. */
+/** One sweep as the fit sees it. Shapes (n): every curve of `data`, and magnitudeOhm. */
 export interface Measured {
   readonly role: Role;
   readonly name: string;
@@ -15,7 +15,6 @@ export interface Measured {
   readonly data: SweepData;
   readonly magnitudeOhm: Float64Array;
   readonly kind: CurveKind;
-  readonly keep: Uint8Array; // 0: a wild point or hum, left out of the fit
   readonly massKg: number; // added mass; 0 in free air
   readonly massUncertaintyKg: number;
   readonly volumeM3: number | null;
@@ -32,23 +31,34 @@ export function measuredSweeps(inputs: RoleInputs, settings: DriverFitSettings):
 
 function measuredSweep(role: Role, { sweep: whole, keys }: RoleInput, settings: DriverFitSettings): Measured[] {
   if (!whole) return [];
-  const sweep = settings.band ? insideBand(whole, settings.band) : whole;
-  const magnitudeOhm = magnitudeOf(sweep);
   return [
     {
+      ...curveOf(settings.band ? insideBand(whole, settings.band) : whole),
       role,
-      name: sweep.name,
-      sweep,
-      data: sweepData(sweep),
-      magnitudeOhm,
-      kind: curveKind(sweep.frequencyHz, magnitudeOhm, sweep.imaginaryOhm),
-      keep: new Uint8Array(magnitudeOhm.length).fill(1),
       massKg: numberOf(keys.mass) ?? 0,
       massUncertaintyKg: numberOf(keys.massUncertainty) ?? settings.massUncertainty ?? 0,
       volumeM3: numberOf(keys.volume),
       volumeUncertaintyM3: numberOf(keys.volumeUncertainty) ?? settings.volumeUncertainty ?? 0,
     },
   ];
+}
+
+type Curve = Pick<Measured, 'name' | 'sweep' | 'data' | 'magnitudeOhm' | 'kind'>;
+
+function curveOf(sweep: Sweep): Curve {
+  const magnitudeOhm = magnitudeOf(sweep);
+  return {
+    name: sweep.name,
+    sweep,
+    data: sweepData(sweep),
+    magnitudeOhm,
+    kind: curveKind(sweep.frequencyHz, magnitudeOhm, sweep.imaginaryOhm),
+  };
+}
+
+/** The same sweep up to a frequency. */
+export function cutTo(measured: Measured, upToHz: number): Measured {
+  return { ...measured, ...curveOf(insideBand(measured.sweep, [0, upToHz])) };
 }
 
 const numberOf = (value: number | string | undefined): number | null => (typeof value === 'number' ? value : null);

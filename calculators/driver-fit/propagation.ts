@@ -53,8 +53,13 @@ interface Direction {
  * (JCGM 100:2008, 5.1 and 5.2). A fit that uses prior values (masses, a DC resistance) splits exactly into what its
  * noise and what each prior contributes: with C = (JᵀJ + P)⁻¹ the latter is the vector C·e/u of that prior.
  */
-export function propagate(outcome: Outcome, externals: Externals, context: FigureContext): Propagated {
-  const functions = numbersOf(outcome, externals);
+export function propagate(
+  outcome: Outcome,
+  externals: Externals,
+  context: FigureContext,
+  heaviestKg: number | null,
+): Propagated {
+  const functions = numbersOf(outcome, externals, heaviestKg);
   const directions = directionsOf(outcome, externals);
   const shares = sharesOf(functions, outcome, directions);
   const centre = functions.numbers(outcome.fit.values, NO_SHIFTS, shares);

@@ -1,3 +1,4 @@
+import { effectiveCount } from '../numerics/autocorrelation.js';
 import type { ComplexArray } from '../numerics/complex-array.js';
 import type { FitRows } from './fit-rows.js';
 
@@ -6,9 +7,10 @@ export interface ResidualStructure {
   readonly isStructured: boolean;
   readonly pointsPerEffective: number; // τ ≥ 1: N/τ points would tell as much if their noise were white
   readonly lagOne: number; // correlation of neighbouring points
+  readonly waves: number; // relative rms of one component, of the part that is no white noise
   readonly excess: number; // variance of averages over about 1/12 octave, against that of white noise
 }
-export const WHITE: ResidualStructure = { isStructured: false, pointsPerEffective: 1, lagOne: 0, excess: 1 };
+export const WHITE: ResidualStructure = { isStructured: false, pointsPerEffective: 1, lagOne: 0, waves: 0, excess: 1 };
 
 /** The same for the rows of a fit: those left out are skipped, averaged ones weigh by √count. */
 export function structureOfRows(
@@ -26,13 +28,12 @@ export function structureOfRows(
 
 const BINS_PER_OCTAVE = 12;
 const SIGNIFICANT = 4.5; // standard deviations: by chance once in 150,000 fits
-const FLOOR = 2e-6; // relative misfit below which structure is rounding, not physics
+const FLOOR = 1e-4; // relative misfit below which structure is beyond every instrument, and moves no figure
 
 /**
  * Tests ρ for correlation along ln f in two ways: between neighbouring points, and between neighbouring averages over
- * 1/12 octave (slow waves of a model that does not quite fit). Where either is significant, τ = 1 + 2Σ r_k with the sum
- * up to the first negative pair of correlations. Source: C. J. Geyer, "Practical Markov Chain Monte Carlo", Statistical
- * Science 7 (1992) for the truncation (from memory); the binning is common practice, no published source.
+ * 1/12 octave (slow waves of a model that does not quite fit). Where either is significant, τ = 1 + 2Σ r_k. Common
+ * practice, no published source.
  * Shapes: frequencyHz (n) rising, misfit (n) in units of its noise or relative; components 2 with phase, 1 without.
  */
 export function residualStructure(
@@ -57,8 +58,9 @@ export function residualStructure(
     (excess - 1) / Math.sqrt(2 / degrees + 3 / (components * n)),
   ];
   if (!(Math.max(...scores) > SIGNIFICANT)) return { ...WHITE, lagOne, excess };
-  const tau = Math.max(correlationTime(misfit, power), 1);
-  return { isStructured: true, pointsPerEffective: tau, lagOne, excess };
+  const tau = effectiveCount(misfit.re, misfit.im).factor;
+  const waves = Math.sqrt(Math.max(power / (components * n) - white, 0));
+  return { isStructured: true, pointsPerEffective: tau, lagOne, waves, excess };
 }
 
 /** Variance per component of white noise, from first differences: blind to slow waves. */
@@ -94,16 +96,5 @@ function binned(frequencyHz: Float64Array, { re, im }: ComplexArray): { values: 
 function sumOfProducts({ re, im }: ComplexArray, lag: number): number {
   let sum = 0;
   for (let i = lag; i < re.length; i += 1) sum += (re[i] ?? 0) * (re[i - lag] ?? 0) + (im[i] ?? 0) * (im[i - lag] ?? 0);
-  return sum;
-}
-
-/** Integrated correlation, cut where a pair of neighbouring lags turns negative. */
-function correlationTime(misfit: ComplexArray, power: number): number {
-  let sum = 1;
-  for (let lag = 1; lag + 1 < misfit.re.length / 3; lag += 2) {
-    const pair = (sumOfProducts(misfit, lag) + sumOfProducts(misfit, lag + 1)) / power;
-    if (pair <= 0) break;
-    sum += 2 * pair;
-  }
   return sum;
 }

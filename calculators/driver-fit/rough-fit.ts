@@ -4,6 +4,7 @@ import { type MotionalStart, motionalStart, startValues } from '../acoustics/sta
 import { logMisfit } from '../acoustics/sweep-term.js';
 import type { CoilModel } from '../acoustics/voice-coil.js';
 import { leastSquares } from '../numerics/least-squares.js';
+import { withinReach, withoutHeld } from './candidates.js';
 import { type FittedCurve, thinnedRows } from './fit-rows.js';
 import type { Measured } from './measured.js';
 import { NO_WILD_POINTS, type WildPoints, wildPoints } from './wild-points.js';
@@ -33,18 +34,16 @@ export function roughFit(
   const rows = thinnedRows(data);
   const fits = coils.map((coil) => {
     const model = { coil, suspension: 'constant', load: FREE_AIR } as const;
-    const fit = leastSquares(
-      driverSweepProblem(model, rows.data, rows.counts),
-      startValues(motional, coil, 'constant'),
-      {
-        loss: 'soft-l1',
-        lossScale: SOFT_SCALE,
-        covariance: false,
-        relativeOffset: 0.05,
-        maxIterations: 25,
-        checkpoint,
-      },
-    );
+    const choice = { coil, suspension: model.suspension, hasRss: false };
+    const problem = withinReach(driverSweepProblem(model, rows.data, rows.counts), choice, motional.fsHz);
+    const fit = leastSquares(problem, withoutHeld(problem, startValues(motional, coil, 'constant')), {
+      loss: 'soft-l1',
+      lossScale: SOFT_SCALE,
+      covariance: false,
+      relativeOffset: 0.05,
+      maxIterations: 25,
+      checkpoint,
+    });
     return { model, values: fit.values, cost: fit.cost };
   });
   const nearest = fits.reduce((best, fit) => (fit.cost < best.cost ? fit : best));

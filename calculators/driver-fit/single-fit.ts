@@ -3,7 +3,7 @@ import { driverSweepProblem } from '../acoustics/driver-sweep-problem.js';
 import { logMisfit } from '../acoustics/sweep-term.js';
 import { leastSquares } from '../numerics/least-squares.js';
 import type { LeastSquaresFit } from '../numerics/least-squares-problem.js';
-import { type ModelChoice, withinReach } from './candidates.js';
+import { type ModelChoice, withinReach, withoutHeld } from './candidates.js';
 import { type FitRows, fitRows } from './fit-rows.js';
 import type { Measured } from './measured.js';
 import { type ResidualStructure, structureOfRows } from './residual-structure.js';
@@ -48,8 +48,8 @@ export function singleFit(
   for (let round = 0; ; round += 1) {
     const rows = fitRows(data, keep, near);
     const weights = rows.counts.map(Math.sqrt);
-    const problem = withinReach(driverSweepProblem(model, rows.data, weights), rough.motional.fsHz);
-    const fit = leastSquares(problem, from, {
+    const problem = withinReach(driverSweepProblem(model, rows.data, weights), choice, rough.motional.fsHz);
+    const fit = leastSquares(problem, withoutHeld(problem, from), {
       relativeOffset: 1e-3,
       maxIterations: 60,
       checkpoint: options.checkpoint,
