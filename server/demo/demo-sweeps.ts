@@ -70,7 +70,7 @@ function withMass(): DemoSweep[] {
 function inTestBox(): DemoSweep[] {
   return IN_TEST_BOX.map((number) => {
     const name = label(number);
-    const box = { vbM3: TEST_VOLUME_M3, leakPaSPerM3: 4e6 };
+    const box = { vbM3: TEST_VOLUME_M3, leakPaSPerM3: 1e9 };
     const trace = traceOf((f) => driverImpedance(lot[number - 1]!, f, box), driverGrid, 300 + number);
     return {
       item: driverItem(number),
