@@ -1,15 +1,8 @@
-import { createBrowserRouter, redirect } from 'react-router-dom';
+import { createBrowserRouter } from 'react-router-dom';
 import { Loading } from './components/loading.js';
 import { RouteError } from './components/route-error.js';
-import { session } from './lib/session.js';
 import { Root } from './pages/root.js';
-
-/** Pages of an account: without a session the sign-in form comes first, and then the page that was asked for. */
-function needsSession({ request }: { request: Request }) {
-  if (session.hint) return null;
-  const { pathname, search } = new URL(request.url);
-  throw redirect(`/sign-in?to=${encodeURIComponent(pathname + search)}`);
-}
+import { SignedIn } from './pages/signed-in.js';
 
 /** Each page is its own piece of code, fetched when it is first opened. A page exports `Component`. */
 export const router = createBrowserRouter([
@@ -27,7 +20,7 @@ export const router = createBrowserRouter([
       { path: 'forgot', lazy: () => import('./pages/forgot.js') },
       { path: 'reset/:code', lazy: () => import('./pages/reset.js') },
       {
-        loader: needsSession,
+        Component: SignedIn,
         ErrorBoundary: RouteError,
         children: [
           { path: 'home', lazy: () => import('./pages/home.js') },

@@ -10,8 +10,9 @@ import { session } from '../lib/session.js';
 import { Menu } from './menu.js';
 
 /** Ends the session here and forgets what was fetched with it. */
-async function signOut(): Promise<void> {
+async function signOut(leave: () => void | Promise<void>): Promise<void> {
   await api.post('/account/sign-out', {}, z.unknown()).catch(() => undefined); // already ended: the same outcome
+  await leave();
   session.signedOut();
   leaveAccountPreferences();
   queryClient.clear();
@@ -27,7 +28,7 @@ export function MeMenu() {
       entries={[
         { id: 'home', label: text.common.home, onAction: () => void navigate('/home') },
         { id: 'me', label: text.common.me, onAction: () => void navigate('/me') },
-        { id: 'out', label: text.common.signOut, onAction: () => void signOut().then(() => navigate('/')) },
+        { id: 'out', label: text.common.signOut, onAction: () => void signOut(() => navigate('/')) },
       ]}
     >
       <CircleUser size={22} aria-hidden />

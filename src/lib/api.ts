@@ -32,7 +32,7 @@ async function withSession<T>(attempt: () => Promise<T>, isAccountRoute: boolean
     if (isAccountRoute || !SIGNED_OUT.has((error as ApiError).code)) throw error;
     if (await refreshOnce()) return attempt();
     if (!session.hint) throw error;
-    if (await session.askAgain()) return attempt();
+    if (await session.ended()) return attempt();
     throw error;
   }
 }

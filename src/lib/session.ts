@@ -12,6 +12,7 @@ const HINT_KEY = 'hummock.signed-in';
 let state: SessionState = { hint: readHint(), isAsking: false };
 const listeners = new Set<() => void>();
 let waiting: ((signedIn: boolean) => void)[] = [];
+let wasSignedIn = false; // while this page was open: only then is there work to lose
 
 function readHint(): boolean {
   try {
@@ -36,17 +37,26 @@ export const session = {
     return state.hint;
   },
   signedIn(): void {
+    wasSignedIn = true;
     change({ hint: true, isAsking: false });
     for (const settle of waiting) settle(true);
     waiting = [];
   },
   signedOut(): void {
+    wasSignedIn = false;
     change({ hint: false, isAsking: false });
     for (const settle of waiting) settle(false);
     waiting = [];
   },
-  /** Asks the person to sign in again over the page; true once they have. */
-  askAgain(): Promise<boolean> {
+  /**
+   * The session has ended. Asks a person who was at work to sign in again over the page, and answers true once they
+   * have; where the hint was merely old, takes it back.
+   */
+  ended(): Promise<boolean> {
+    if (!wasSignedIn) {
+      this.signedOut();
+      return Promise.resolve(false);
+    }
     if (!state.isAsking) change({ ...state, isAsking: true });
     return new Promise((settle) => waiting.push(settle));
   },

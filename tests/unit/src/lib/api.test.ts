@@ -108,6 +108,17 @@ it('gives the request up when the person leaves instead of signing in again', as
   expect((await waiting)?.code).toBe('not-signed-in');
 });
 
+it('takes an old hint back without asking, when nobody was signed in on this page', async () => {
+  localStorage.setItem('hummock.signed-in', 'yes');
+  vi.resetModules();
+  const { api: freshApi } = await import('../../../../src/lib/api.js');
+  const { session: freshSession } = await import('../../../../src/lib/session.js');
+  expect(freshSession.hint).toBe(true);
+  answer = () => problem(401, 'not-signed-in');
+  await expect(freshApi.get('/thing', Value)).rejects.toMatchObject({ code: 'not-signed-in' });
+  expect(freshSession.hint).toBe(false);
+});
+
 it('never tries to refresh for the account routes themselves', async () => {
   answer = () => problem(401, 'sign-in-failed');
   expect((await codeOf(api.post('/account/sign-in', {}, Value)))?.code).toBe('sign-in-failed');
