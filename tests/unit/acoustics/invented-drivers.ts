@@ -1,4 +1,4 @@
-import { driverImpedance, FREE_AIR } from '../../../calculators/acoustics/driver-impedance.js';
+import { type DriverModel, driverImpedance, FREE_AIR } from '../../../calculators/acoustics/driver-impedance.js';
 import { frequencyGrid } from '../../../calculators/acoustics/frequency-grid.js';
 import type { SuspensionModel } from '../../../calculators/acoustics/suspension.js';
 import { type CoilModel, coilValues } from '../../../calculators/acoustics/voice-coil.js';
@@ -45,7 +45,7 @@ export function inventedDriver(
   seed: number,
   coil: CoilModel,
   suspension: SuspensionModel,
-  options: { noise?: number; points?: number; low?: number; high?: number } = {},
+  options: SweepOptions = {},
 ): InventedDriver {
   const random = seededRandom(seed);
   const fsHz = random.logBetween(18, 900);
@@ -63,7 +63,24 @@ export function inventedDriver(
     ...inventedCoil(coil, reOhm * random.logBetween(0.5, 6), random),
     ...suspensionValues,
   ];
-  const { noise = 0.005, points = 300, low = Math.min(10, fsHz / 4), high = 20_000 } = options;
+  const { low = Math.min(10, fsHz / 4), ...others } = options;
+  return { coil, suspension, values, sweep: noisySweep({ coil, suspension }, values, random, { low, ...others }) };
+}
+
+export interface SweepOptions {
+  readonly noise?: number; // relative, each component
+  readonly points?: number;
+  readonly low?: number; // Hz
+  readonly high?: number;
+}
+
+/** The sweep of a driver in free air with these values: log-spaced points, relative complex noise. */
+export function noisySweep(
+  { coil, suspension }: Pick<DriverModel, 'coil' | 'suspension'>,
+  values: readonly number[],
+  random: RandomSource,
+  { noise = 0.005, points = 300, low = 10, high = 20_000 }: SweepOptions = {},
+): ComplexSweep {
   const frequencyHz = Float64Array.from({ length: points }, (_, i) => low * (high / low) ** (i / (points - 1)));
   const z = driverImpedance({ coil, suspension, load: FREE_AIR }, values, frequencyGrid(frequencyHz));
   for (let i = 0; i < points; i++) {
@@ -72,12 +89,5 @@ export function inventedDriver(
     z.re[i] = re * a - im * b;
     z.im[i] = re * b + im * a;
   }
-  const sweep = {
-    name: `seed ${seed}`,
-    frequencyHz,
-    realOhm: z.re,
-    imaginaryOhm: z.im,
-    conditions: { role: 'free-air' as const },
-  };
-  return { coil, suspension, values, sweep };
+  return { name: coil, frequencyHz, realOhm: z.re, imaginaryOhm: z.im, conditions: { role: 'free-air' } };
 }
