@@ -3,10 +3,12 @@ import { driverSweepProblem } from '../../calculators/acoustics/driver-sweep-pro
 import { frequencyGrid } from '../../calculators/acoustics/frequency-grid.js';
 import { sweepData } from '../../calculators/acoustics/sweep-term.js';
 import { COIL_MODELS, type CoilModel, coilValues } from '../../calculators/acoustics/voice-coil.js';
+import { driverFit } from '../../calculators/driver-fit/index.js';
+import type { ComplexSweep } from '../../calculators/kit/sweep.js';
 import { leastSquares } from '../../calculators/numerics/least-squares.js';
 import type { LeastSquaresFit, LeastSquaresProblem } from '../../calculators/numerics/least-squares-problem.js';
-import { seededRandom } from '../../calculators/numerics/random.js';
-import { quantile } from '../../calculators/numerics/statistics.js';
+import { type RandomSource, seededRandom } from '../../calculators/numerics/random.js';
+import { median, quantile } from '../../calculators/numerics/statistics.js';
 import { type Bench, type Measured, timesOf } from './bench.js';
 import { ScipyProcess } from './scipy-process.js';
 
@@ -14,6 +16,7 @@ const POINTS = 600;
 const NOISE = 0.005;
 const ROUNDS = 8; // ours and theirs in turn, so that both meet the same machine
 const BAR = 10; // times faster than SciPy
+const WHOLE_BAR_MS = 60;
 const UNDISTURBED = 0.1; // of all runs on each side, the time that a tenth keeps under: other work on the machine counts for neither
 
 /** An invented mid-woofer with each coil. */
@@ -38,8 +41,8 @@ interface Answer {
   readonly evaluations: number;
 }
 
-function caseOf(coil: CoilModel, seed: number): Case {
-  const random = seededRandom(seed);
+/** A sweep of the invented driver with this coil, and the true fitted values. */
+function invented(coil: CoilModel, random: RandomSource): { sweep: ComplexSweep; truth: number[] } {
   const frequencyHz = Float64Array.from({ length: POINTS }, (_, i) => 10 * 2000 ** (i / (POINTS - 1)));
   const truth = [6.1, 42, 4.2, 0.47, ...coilValues(coil, COILS[coil])];
   const z = driverImpedance({ coil, suspension: 'constant', load: FREE_AIR }, truth, frequencyGrid(frequencyHz));
@@ -48,13 +51,14 @@ function caseOf(coil: CoilModel, seed: number): Case {
     z.re[i] = re * a - im * b;
     z.im[i] = re * b + im * a;
   }
-  const data = sweepData({
-    name: coil,
-    frequencyHz,
-    realOhm: z.re,
-    imaginaryOhm: z.im,
-    conditions: { role: 'free-air' },
-  });
+  const conditions = { role: 'free-air' } as const;
+  return { sweep: { name: coil, frequencyHz, realOhm: z.re, imaginaryOhm: z.im, conditions }, truth };
+}
+
+function caseOf(coil: CoilModel, seed: number): Case {
+  const random = seededRandom(seed);
+  const { sweep, truth } = invented(coil, random);
+  const data = sweepData(sweep);
   const weights = new Float64Array(POINTS).fill(1);
   const problem = driverSweepProblem({ coil, suspension: 'constant', load: FREE_AIR }, data, weights);
   const start = Float64Array.from(truth, (value, k) =>
@@ -63,9 +67,9 @@ function caseOf(coil: CoilModel, seed: number): Case {
   const scaled = (value: number, k: number) => (problem.parameters[k]!.logScaled ? Math.log(value) : value);
   const request = {
     coil,
-    frequencyHz: [...frequencyHz],
-    re: [...z.re],
-    im: [...z.im],
+    frequencyHz: [...sweep.frequencyHz],
+    re: [...sweep.realOhm],
+    im: [...sweep.imaginaryOhm],
     start: [...start].map(scaled),
     lower: problem.parameters.map(({ lower }, k) => scaled(lower!, k)),
     upper: problem.parameters.map(({ upper }, k) => scaled(upper!, k)),
@@ -111,6 +115,25 @@ async function compared(one: Case, scipy: ScipyProcess): Promise<Measured> {
   };
 }
 
+/** The whole calculator, every coil with every suspension, start and uncertainties included. */
+function wholeCalculator(coil: CoilModel): Measured {
+  const { sweep } = invented(coil, seededRandom(7));
+  const inputs = { 'free-air': [{ sweep, keys: {} }] };
+  const settings = driverFit.settings.parse({ pistonDiameter: 0.135 });
+  const context = { progress: () => undefined, checkpoint: () => undefined, seed: 1 };
+  const run = () => driverFit.run(inputs, settings, context);
+  timesOf(run, 1500); // warm
+  const times = timesOf(run, 1500);
+  const models = run().tables.find(({ id }) => id === 'models')?.rows.length ?? 0;
+  return {
+    name: `driver-fit with auto, ${coil}`,
+    value: quantile(times, UNDISTURBED),
+    unit: 'ms',
+    atMost: WHOLE_BAR_MS,
+    note: `${models} models compared; median ${median(times).toFixed(1)} ms`,
+  };
+}
+
 export const bench: Bench = {
   title: `One fit of ${POINTS} complex points: speed against scipy.optimize.least_squares (trf, bounds, 2-point)`,
   async run() {
@@ -120,6 +143,7 @@ export const bench: Bench = {
       console.log(`  SciPy ${versions.scipy}, NumPy ${versions.numpy}, Node ${process.version}`);
       const rows: Measured[] = [];
       for (const [i, coil] of COIL_MODELS.entries()) rows.push(await compared(caseOf(coil, 100 + i), scipy));
+      for (const coil of COIL_MODELS) rows.push(wholeCalculator(coil));
       return rows;
     } finally {
       scipy.close();
