@@ -1,3 +1,4 @@
+import { readFile } from 'node:fs/promises';
 import AxeBuilder from '@axe-core/playwright';
 import { type CDPSession, expect, type Locator, type Page, test } from '@playwright/test';
 import type { ChartState } from '../../shared/drawing/chart-input.js';
@@ -239,6 +240,44 @@ test.describe('by keys alone', () => {
     await page.getByRole('button', { name: 'As table' }).click();
     const peak = page.getByRole('row', { name: /peak/ });
     await expect(peak).toContainText(/46\.\d+\sΩ/);
+  });
+});
+
+test.describe('as files', () => {
+  const saved = async (page: Page, name: string): Promise<{ name: string; bytes: Buffer }> => {
+    const [download] = await Promise.all([
+      page.waitForEvent('download'),
+      page.getByRole('button', { name, exact: true }).click(),
+    ]);
+    return { name: download.suggestedFilename(), bytes: await readFile(await download.path()) };
+  };
+
+  test('the SVG holds legend and units, the PNG is twice the size, the CSV agrees with the cursors', async ({
+    page,
+  }) => {
+    await open(page, 'count=2&theme=dark&state={"cursorAHz":31.8}');
+    await page.getByRole('button', { name: 'Export' }).click();
+    const svg = await saved(page, 'SVG');
+    expect(svg.name).toBe('Rehearsal-room-2-mid-woofers.svg');
+    for (const part of ['W-0418', 'Frequency, Hz', 'Impedance |Z|, Ω', 'Revision 3', '#FDFEFC']) {
+      expect(svg.bytes.toString('utf8')).toContain(part);
+    }
+    const png = await saved(page, 'PNG 2×');
+    expect(png.bytes.readUInt32BE(16)).toBe(2 * (await drawing(page).evaluate((element) => element.clientWidth)));
+    await page.getByLabel('Decimal mark').selectOption('comma');
+    await expect(page.getByRole('button', { name: 'CSV', exact: true })).toBeDisabled();
+    await page.getByLabel('Separator').selectOption('semicolon');
+    const csv = (await saved(page, 'CSV')).bytes.toString('utf8');
+    expect(csv.split('\r\n')).toHaveLength(1 + 2 * 600 + 1);
+
+    await drawing(page).focus();
+    await page.keyboard.press('ArrowRight'); // from between two points to a measured one
+    const hz = (await settled(page, (now) => now.cursorAHz !== 31.8)).cursorAHz ?? 0;
+    const row = csv.split('\r\n').find((line) => line.startsWith(`"W-0417";${String(hz).replace('.', ',')};`));
+    const ohm = Number(row?.split(';')[2]?.replace(',', '.'));
+    await expect(page.locator('.chart-drawing svg text', { hasText: '°' }).last()).toHaveText(
+      new RegExp(`^${ohm.toPrecision(4).replace('.', '\\.')}\\sΩ `),
+    );
   });
 });
 

@@ -4,21 +4,26 @@ import { signedDegrees } from '../../../shared/drawing/marks/cursors.js';
 import { impedanceTable } from '../../../shared/drawing/words/describe.js';
 import { formatQuantity } from '../../../shared/quantity-text.js';
 import { text } from '../../../shared/text.js';
+import { ChartExport } from './chart-export.js';
 import type { ChartStore } from './chart-store.js';
+import type { ChartView } from './chart-view.js';
 import { useSettledState } from './use-chart-store.js';
 
 interface ChartTwinsProps {
   readonly content: ChartContent;
   readonly store: ChartStore;
+  readonly view: ChartView | null;
   readonly sentence: string;
   readonly locale: string | undefined;
 }
 const words = text.chart.twins;
 
-/** The same chart as a sentence and as a table, one button each. */
-export function ChartTwins({ content, store, sentence, locale }: ChartTwinsProps) {
-  const [shown, setShown] = useState<'sentence' | 'table' | null>(null);
-  const button = (twin: 'sentence' | 'table', label: string) => (
+type Twin = 'sentence' | 'table' | 'export';
+
+/** The same chart as a sentence, as a table and as a file, one button each. */
+export function ChartTwins({ content, store, view, sentence, locale }: ChartTwinsProps) {
+  const [shown, setShown] = useState<Twin | null>(null);
+  const button = (twin: Twin, label: string) => (
     <button
       type="button"
       className="chart-button chart-quiet"
@@ -33,14 +38,16 @@ export function ChartTwins({ content, store, sentence, locale }: ChartTwinsProps
       <div className="chart-row">
         {button('sentence', words.asSentence)}
         {button('table', words.asTable)}
+        {button('export', text.chart.export.button)}
       </div>
       {shown === 'sentence' && <p className="chart-sentence">{sentence}</p>}
+      {shown === 'export' && view && <ChartExport view={view} locale={locale} />}
       {shown === 'table' && <PointsTable content={content} store={store} locale={locale} />}
     </figcaption>
   );
 }
 
-function PointsTable({ content, store, locale }: Omit<ChartTwinsProps, 'sentence'>) {
+function PointsTable({ content, store, locale }: Pick<ChartTwinsProps, 'content' | 'store' | 'locale'>) {
   const { frequencyRangeHz } = useSettledState(store);
   const sweep = activeSweep(content);
   const rows = useMemo(() => (sweep ? impedanceTable(sweep.points, frequencyRangeHz) : []), [sweep, frequencyRangeHz]);

@@ -18,9 +18,10 @@ import {
 import { drawCursors } from '../../../shared/drawing/marks/cursors.js';
 import type { ChartTheme } from '../../../shared/drawing/palette.js';
 import type { Primitive } from '../../../shared/drawing/primitives.js';
-import type { Range, ScaleKind } from '../../../shared/drawing/scales/axis-scale.js';
+import { pixelOf, type Range, type ScaleKind } from '../../../shared/drawing/scales/axis-scale.js';
 import { between, keptNear } from '../../../shared/drawing/scales/ranges.js';
 import { svgOf } from '../../../shared/drawing/svg.js';
+import { valueOfCurve } from '../../../shared/drawing/words/readout.js';
 import type { ChartStore } from './chart-store.js';
 import { isWorkshop, prefersStillness, readChartTheme } from './chart-theme.js';
 import { paintOnCanvas } from './paint-canvas.js';
@@ -29,6 +30,7 @@ export interface ChartElements {
   readonly canvas: HTMLCanvasElement; // grid and curves
   readonly frame: SVGGElement; // neat line, ticks, words
   readonly cursors: SVGGElement;
+  readonly rings: SVGGElement; // the one moving ornament: a ring around a new marker
 }
 export type AxisName = Quantity | 'frequency';
 const MOVE_MS = 200;
@@ -60,9 +62,26 @@ export class ChartView {
     return activeSweep(this.content);
   }
   show(content: ChartContent, locale: string | undefined): void {
+    const known = new Set(this.content.markers?.map(({ frequencyHz }) => frequencyHz));
+    const added = (content.markers ?? []).filter(({ frequencyHz }) => !known.has(frequencyHz));
     this.content = content;
     this.locale = locale;
     this.requestAll();
+    if (this.painted && !prefersStillness()) for (const { frequencyHz } of added) this.ring(frequencyHz);
+  }
+  private ring(hz: number): void {
+    const { frequency, frame, strips } = this.currentLayout();
+    const x = pixelOf(frequency, hz);
+    const value = this.active && valueOfCurve(this.active.points, hz);
+    const strip = strips.find(({ quantity }) => quantity === 'magnitude');
+    if (!value || !strip || x < frame.x || x > frame.x + frame.width) return;
+    const circle = document.createElementNS('http://www.w3.org/2000/svg', 'circle');
+    circle.setAttribute('class', 'chart-ring');
+    circle.setAttribute('cx', String(x));
+    circle.setAttribute('cy', String(pixelOf(strip.scale, value.magnitudeOhm)));
+    circle.setAttribute('r', '18');
+    circle.addEventListener('animationend', () => circle.remove());
+    this.elements.rings.append(circle);
   }
   resize(widthPx: number, heightPx: number): void {
     this.widthPx = Math.round(widthPx);

@@ -41,7 +41,7 @@ export interface SweepChartProps {
   readonly letters?: ChartLetters | 'off'; // letter keys as a person set them
   readonly locale?: string;
   readonly controls?: 'below' | 'none'; // zoom, range, scale and cursor fields under the drawing
-  readonly twins?: 'below' | 'none'; // "As table" and "As sentence"
+  readonly twins?: 'below' | 'none'; // "As sentence", "As table" and "Export"
   readonly className?: string; // of the figure; its height is the chart's
   readonly children?: ReactNode; // shown over the drawing, out of the way of the curve
 }
@@ -62,7 +62,9 @@ export function SweepChart(props: SweepChartProps) {
       <DrawingArea {...props} refs={refs} view={view} spoken={spoken} sentence={sentence} onStepBack={goBack} />
       <SpokenValue spoken={spoken} />
       {view && props.controls !== 'none' && <ChartControls view={view} locale={locale} onStepBack={goBack} />}
-      {props.twins !== 'none' && <ChartTwins content={content} store={store} sentence={sentence} locale={locale} />}
+      {props.twins !== 'none' && (
+        <ChartTwins content={content} store={store} view={view} sentence={sentence} locale={locale} />
+      )}
     </figure>
   );
 }
@@ -118,6 +120,7 @@ function DrawingArea(props: DrawingAreaProps) {
           <canvas ref={refs.canvas} />
           <svg focusable="false" aria-hidden="true">
             <g ref={refs.frame} />
+            <g ref={refs.rings} />
             <g ref={refs.cursors} />
           </svg>
         </div>

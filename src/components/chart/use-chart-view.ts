@@ -9,6 +9,7 @@ export interface ChartRefs {
   readonly canvas: RefObject<HTMLCanvasElement | null>;
   readonly frame: RefObject<SVGGElement | null>;
   readonly cursors: RefObject<SVGGElement | null>;
+  readonly rings: RefObject<SVGGElement | null>;
 }
 
 /** Ties a painter to its elements: size, theme, pixel ratio and store. Null until the elements exist. */
@@ -18,14 +19,20 @@ export function useChartView(store: ChartStore, content: ChartContent, locale: s
     canvas: useRef<HTMLCanvasElement>(null),
     frame: useRef<SVGGElement>(null),
     cursors: useRef<SVGGElement>(null),
+    rings: useRef<SVGGElement>(null),
   };
   const [view, setView] = useState<ChartView | null>(null);
-  const { root, canvas, frame, cursors } = refs;
+  const { root, canvas, frame, cursors, rings } = refs;
   const first = useRef({ content, locale });
 
   useLayoutEffect(() => {
-    if (!root.current || !canvas.current || !frame.current || !cursors.current) return;
-    const elements = { canvas: canvas.current, frame: frame.current, cursors: cursors.current };
+    if (!root.current || !canvas.current || !frame.current || !cursors.current || !rings.current) return;
+    const elements = {
+      canvas: canvas.current,
+      frame: frame.current,
+      cursors: cursors.current,
+      rings: rings.current,
+    };
     const made = new ChartView(elements, store, first.current.content, first.current.locale);
     const { width, height } = root.current.getBoundingClientRect();
     made.resize(width, height);
@@ -41,7 +48,7 @@ export function useChartView(store: ChartStore, content: ChartContent, locale: s
       made.stop();
       setView(null);
     };
-  }, [store, root, canvas, frame, cursors]);
+  }, [store, root, canvas, frame, cursors, rings]);
 
   useEffect(() => view?.show(content, locale), [view, content, locale]);
   return { refs, view };
