@@ -6,7 +6,7 @@ import type { LeastSquaresFit } from '../numerics/least-squares-problem.js';
 import { type Candidate, type ModelChoice, modelChoices, modelName, type Ranked, ranked } from './candidates.js';
 import { type FitOptions, freeAirModels, loadedFit } from './free-air-models.js';
 import { type FitSweep, finalFit, type JointSetup, type JointShape, jointCandidate, valuesById } from './joint-fit.js';
-import { boxShape, hasOtherRe } from './load-checks.js';
+import { jointShape } from './load-checks.js';
 import type { Measured } from './measured.js';
 import { type ResidualStructure, structureOfRows } from './residual-structure.js';
 import { exchangedFits, type SeriesVerdict, seriesVerdict } from './series.js';
@@ -52,7 +52,8 @@ export function analyse(measured: readonly Measured[], settings: DriverFitSettin
     return { ...analyse(righted, settings, context), verdict };
   }
   const righted = exchanged ? inDeclaredRoles(exchangedFits(singles, exchanged), measured) : singles;
-  const used = righted.filter((_, i) => !(verdict.isNamedSurely && verdict.inconsistent.includes(i)));
+  const doubtful = verdict.isNamedSurely ? righted : withDoubtfulMasses(righted, verdict.inconsistent);
+  const used = doubtful.filter((_, i) => !(verdict.isNamedSurely && verdict.inconsistent.includes(i)));
   return { ...fitTogether(used, models.values, job), verdict, singles: righted };
 }
 
@@ -70,6 +71,22 @@ function inRoleOf(sweep: Measured, place: Measured): Measured {
 
 function inDeclaredRoles(fits: readonly SingleFit[], measured: readonly Measured[]): SingleFit[] {
   return fits.map((fit, i) => ({ ...fit, measured: inRoleOf(fit.measured, measured[i] ?? fit.measured) }));
+}
+
+/**
+ * Where the masses contradict each other and nobody can tell which is wrong, each is as uncertain as they are apart: the
+ * range of Mms = m/((fs/fm)² − 1) over its mean.
+ */
+function withDoubtfulMasses(fits: readonly SingleFit[], places: readonly number[]): SingleFit[] {
+  const [free] = fits;
+  const masses = fits.map(({ measured, fsHz }) => measured.massKg / (((free?.fsHz ?? fsHz) / fsHz) ** 2 - 1));
+  const told = masses.filter((mass, i) => places.includes(i) && mass > 0 && Number.isFinite(mass));
+  if (told.length < 2) return [...fits];
+  const range = (Math.max(...told) - Math.min(...told)) / (told.reduce((a, b) => a + b, 0) / told.length);
+  return fits.map((fit, i) => {
+    const massUncertaintyKg = Math.max(fit.measured.massUncertaintyKg, range * fit.measured.massKg);
+    return places.includes(i) ? { ...fit, measured: { ...fit.measured, massUncertaintyKg } } : fit;
+  });
 }
 
 /** A DC resistance measured apart is knowledge of Re; without an uncertainty it counts as exact to 0.01 %. */
@@ -91,11 +108,11 @@ function fitTogether(
   const sweeps = singles.map(
     (alone): FitSweep => ({ measured: alone.measured, rows: alone.rows, noise: alone.noise, alone, misfitSquares: 0 }),
   );
-  const plain: JointShape = { boxKind: 'sealed', isBoxMassFree: false, hasOwnRe: hasOtherRe(singles) };
+  const plain: JointShape = { boxKind: 'sealed', isBoxMassFree: false, hasOwnRe: singles.map(() => false) };
   const leader = singles[0]?.choice ?? choices[0];
   const valuesOf = (choice: ModelChoice) => freeAir.get(modelName(choice)) ?? {};
   const shape = leader
-    ? boxShape(leader, { sweeps, shape: plain, priors }, valuesOf(leader), settings, checkpoint)
+    ? jointShape(leader, { sweeps, shape: plain, priors }, valuesOf(leader), settings, checkpoint)
     : plain;
   const setup: JointSetup = { sweeps, shape, priors };
   const candidates = choices.map((choice, i) => {

@@ -16,6 +16,7 @@ const NEEDS_VAS = new Set(['Vas', 'eta0', 'SPL1W', 'SPL2V83']);
 const NEEDS_1K = new Set(['Le1k']);
 const NEEDS_10K = new Set(['Le10k', 'Rcoil10k']);
 const EXACT = new Set(['ratedZ', 'rmsResidual']);
+const NOTHING = 1e-12; // relative: rounding of the arithmetic, not an uncertainty
 const EXACT_NOTES: Readonly<Record<string, string>> = {
   ratedZ: 'A step function of Zmin: no uncertainty of its own.',
   rmsResidual: 'Describes this fit: no uncertainty of its own.',
@@ -39,11 +40,12 @@ export function figuresOf(
 
 function withUncertainty(id: string, unit: string, found: Estimate): Figure {
   const { value, uncertainty, interval, parts, spread, drift, noiseDof, kind } = found;
+  const isExact = !(uncertainty > NOTHING * Math.abs(value));
   if (EXACT.has(id)) return { id, unit, value, note: EXACT_NOTES[id] ?? '' };
-  if (!Number.isFinite(uncertainty) || (uncertainty === 0 && id !== 'fZmin')) {
+  if (!Number.isFinite(uncertainty) || (isExact && id !== 'fZmin')) {
     return { id, unit, value, note: exactNote(id) };
   }
-  if (uncertainty === 0) return { id, unit, value, note: 'At the end of the sweep: the curve still falls there.' };
+  if (isExact) return { id, unit, value, note: 'At the end of the sweep: the curve still falls there.' };
   return {
     id,
     unit,

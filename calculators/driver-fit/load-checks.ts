@@ -3,48 +3,66 @@ import { type JointSetup, type JointShape, jointCandidate, valuesById } from './
 import type { DriverFitSettings } from './settings.js';
 import type { SingleFit } from './single-fit.js';
 
-const RE_LIMIT = 0.02; // common practice: more is a warm coil or a bad contact
+export const RE_LIMIT = 0.02; // common practice: more is a warm coil or a bad contact
+const SUSPECT = 0.012; // of Re by itself: worth a try in the joint fit
 const CLEARLY_BETTER = 10; // of BIC
-const LEAST_MASS_CHANGE = 0.02; // of Mms
+export const LEAST_MASS_CHANGE = 0.02; // of Mms
 export const LEAKY_BELOW = 20; // QL: sound test boxes reach 30 and more (common practice)
 
-/** Which sweeps have a resistance that differs from free air by more than 2 % and by more than chance. */
-export function hasOtherRe(singles: readonly SingleFit[]): boolean[] {
-  const [free] = singles;
-  return singles.map((single) => {
-    if (!free || single === free) return false;
-    const change = Math.abs(Math.log(single.reOhm / free.reOhm));
-    return change > RE_LIMIT && change > 3 * Math.hypot(single.relative.re, free.relative.re);
-  });
+interface Trial {
+  readonly shape: JointShape;
+  readonly bic: number;
+  readonly values: Readonly<Record<string, number>>;
 }
 
 /**
- * What the test box needs beside its volume: a leak, a moving mass of its own (another air load, or something moved),
- * each only where the joint fit is clearly better with it. Which mass is taken can be settled by a setting.
+ * What the loaded sweeps need beside mass and volume, each only where the joint fit is clearly better with it: a leak of
+ * the test box; a moving mass of its own in it (another air load, or something moved), unless a setting decides; a DC
+ * resistance of its own for a sweep whose Re is more than 2 % off.
  */
-export function boxShape(
+export function jointShape(
   choice: ModelChoice,
   setup: JointSetup,
   freeAir: Readonly<Record<string, number>>,
   { boxMass }: DriverFitSettings,
   checkpoint: () => void,
 ): JointShape {
-  const box = setup.sweeps.findIndex(({ measured }) => measured.role === 'known-volume');
-  if (box < 0) return setup.shape;
-  const rows = setup.sweeps.reduce((sum, { rows: { data } }) => sum + (data.hasPhase ? 2 : 1) * data.re.length, 0);
-  const tried = (shape: JointShape) => {
+  const { sweeps } = setup;
+  if (sweeps.length === 1) return setup.shape;
+  const rows = sweeps.reduce((sum, sweep) => sum + rowsOf(sweep) / sweep.alone.structure.pointsPerEffective, 0);
+  const tried = (shape: JointShape): Trial => {
     const candidate = jointCandidate(choice, { ...setup, shape }, freeAir, checkpoint);
     const bic = rows * Math.log(candidate.squares / rows) + candidate.freeParameters * Math.log(rows);
     return { shape, bic, values: valuesById(candidate.problem, candidate.fit) };
   };
-  const isFree = boxMass === 'unequal';
-  let best = tried({ ...setup.shape, isBoxMassFree: isFree });
-  const leaky = tried({ ...best.shape, boxKind: 'leaky' });
-  if (leaky.bic < best.bic - CLEARLY_BETTER && (leaky.values[`QL${box + 1}`] ?? 0) < LEAKY_BELOW) best = leaky;
-  if (boxMass === 'auto') {
-    const unequal = tried({ ...best.shape, isBoxMassFree: true });
-    const change = Math.abs(unequal.values[`mu${box + 1}`] ?? 0);
-    if (unequal.bic < best.bic - CLEARLY_BETTER && change > LEAST_MASS_CHANGE) best = unequal;
+  let best = tried({ ...setup.shape, isBoxMassFree: boxMass === 'unequal' });
+  const better = (shape: JointShape, isPlausible: (values: Trial['values']) => boolean): void => {
+    const trial = tried(shape);
+    if (trial.bic < best.bic - CLEARLY_BETTER && isPlausible(trial.values)) best = trial;
+  };
+  const box = sweeps.findIndex(({ measured }) => measured.role === 'known-volume') + 1;
+  if (box > 0) {
+    better({ ...best.shape, boxKind: 'leaky' }, () => true);
+    if (boxMass === 'auto') {
+      better({ ...best.shape, isBoxMassFree: true }, (values) => Math.abs(values[`mu${box}`] ?? 0) > LEAST_MASS_CHANGE);
+    }
+  }
+  for (const place of suspects(sweeps.map(({ alone }) => alone))) {
+    const hasOwnRe = best.shape.hasOwnRe.map((own, i) => own || i === place);
+    better({ ...best.shape, hasOwnRe }, (values) => {
+      const ratio = (values[`Re${place + 1}`] ?? 1) / (values.Re ?? 1);
+      return Math.abs(Math.log(ratio)) > RE_LIMIT;
+    });
   }
   return best.shape;
+}
+
+const rowsOf = ({ rows: { data } }: JointSetup['sweeps'][number]): number => (data.hasPhase ? 2 : 1) * data.re.length;
+
+function suspects(singles: readonly SingleFit[]): number[] {
+  const [free] = singles;
+  return singles.flatMap((single, i) => {
+    if (!free || i === 0) return [];
+    return Math.abs(Math.log(single.reOhm / free.reOhm)) > SUSPECT ? [i] : [];
+  });
 }

@@ -3,6 +3,7 @@ import type { Analysis } from './analysis.js';
 import type { Externals } from './externals.js';
 import { finding, grams, hertz, listed, litres, ohms, percent } from './finding.js';
 import { valuesById } from './joint-fit.js';
+import { LEAKY_BELOW, LEAST_MASS_CHANGE, RE_LIMIT } from './load-checks.js';
 import type { Measured } from './measured.js';
 import type { Propagated } from './propagation.js';
 import type { DriverFitSettings } from './settings.js';
@@ -21,7 +22,7 @@ export function loadFindings(
   return [
     ...seriesFindings(measured, analysis),
     ...shiftFindings(analysis.singles),
-    ...resistanceFindings(analysis.singles, settings),
+    ...resistanceFindings(analysis, settings),
     ...boxFindings(analysis, propagated),
   ];
 }
@@ -73,27 +74,24 @@ function shiftFindings(singles: readonly SingleFit[]): Finding[] {
   return found;
 }
 
-const RE_LIMIT = 0.02;
-
-function resistanceFindings(singles: readonly SingleFit[], { dcResistance }: DriverFitSettings): Finding[] {
-  const [free] = singles;
-  if (!free) return [];
-  const found = singles.flatMap((single) => {
-    if (single === free) return [];
-    const ratio = single.reOhm / free.reOhm - 1;
-    if (!isOff(ratio, single, free)) return [];
-    const message = `Re is ${ohms(single.reOhm)} in ${single.measured.name} and ${ohms(free.reOhm)} in free air, ${percent(Math.abs(ratio))} apart: a warm coil or a bad contact. Each sweep gets a resistance of its own here; let the coil cool, check the clips and sweep again.`;
-    return [finding('re-mismatch', message, { evidence: { ratio: 1 + ratio } })];
+function resistanceFindings({ setup, outcomes, singles }: Analysis, { dcResistance }: DriverFitSettings): Finding[] {
+  const [{ problem, fit }] = outcomes;
+  const values = valuesById(problem, fit);
+  const shared = values.Re ?? 1;
+  const found = setup.sweeps.flatMap(({ measured }, i) => {
+    const own = values[`Re${i + 1}`];
+    if (!setup.shape.hasOwnRe[i] || own === undefined) return [];
+    const ratio = own / shared;
+    const message = `Re is ${ohms(own)} in ${measured.name} and ${ohms(shared)} in free air, ${percent(Math.abs(ratio - 1))} apart: a warm coil or a bad contact. Each sweep gets a resistance of its own here; let the coil cool, check the clips and sweep again.`;
+    return [finding('re-mismatch', message, { evidence: { ratio } })];
   });
-  if (dcResistance === undefined) return found;
-  const ratio = free.reOhm / dcResistance - 1;
-  if (!isOff(ratio, free, free)) return found;
-  const message = `The sweep gives Re ${ohms(free.reOhm)}, the DC resistance told is ${ohms(dcResistance)}: ${percent(Math.abs(ratio))} apart. Take the leads off the reading, and check the clips.`;
-  return [...found, finding('re-mismatch', message, { evidence: { ratio: 1 + ratio } })];
+  const [free] = singles;
+  if (dcResistance === undefined || !free) return found;
+  const ratio = free.reOhm / dcResistance;
+  if (Math.abs(ratio - 1) < Math.max(RE_LIMIT, 3 * free.relative.re)) return found;
+  const message = `The sweep gives Re ${ohms(free.reOhm)}, the DC resistance told is ${ohms(dcResistance)}: ${percent(Math.abs(ratio - 1))} apart. Take the leads off the reading, and check the clips.`;
+  return [...found, finding('re-mismatch', message, { evidence: { ratio } })];
 }
-
-const isOff = (ratio: number, a: SingleFit, b: SingleFit): boolean =>
-  Math.abs(ratio) > RE_LIMIT && Math.abs(ratio) > 3 * Math.hypot(a.relative.re, b.relative.re);
 
 function boxFindings({ setup, outcomes }: Analysis, propagated: Propagated): Finding[] {
   const [{ problem, fit }] = outcomes;
@@ -102,12 +100,12 @@ function boxFindings({ setup, outcomes }: Analysis, propagated: Propagated): Fin
   const name = setup.sweeps[place - 1]?.measured.name ?? '';
   const found: Finding[] = [];
   const leak = values[`QL${place}`];
-  if (setup.shape.boxKind === 'leaky' && leak !== undefined) {
+  if (setup.shape.boxKind === 'leaky' && leak !== undefined && leak < LEAKY_BELOW) {
     const message = `The test box of ${name} leaks: its QL is ${Number(leak.toPrecision(2))}, sound ones reach 30 and more. The leak is in the fit; seal the box and the driver's rim, and sweep again.`;
     found.push(finding('test-box-leaky', message, { evidence: { QL: leak } }));
   }
   const change = values[`mu${place}`];
-  if (setup.shape.isBoxMassFree && change !== undefined && Math.abs(change) > 0.02) {
+  if (setup.shape.isBoxMassFree && change !== undefined && Math.abs(change) > LEAST_MASS_CHANGE) {
     const message = `The moving mass in the test box is ${percent(Math.abs(change))} ${change > 0 ? 'more' : 'less'} than in free air. A few per cent are the box's air load; more means that something moved. Vas is taken without assuming equal masses.`;
     found.push(finding('moving-mass-changed', message, { evidence: { change } }));
   }

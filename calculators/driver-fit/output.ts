@@ -18,6 +18,7 @@ import { threePoint } from './three-point.js';
 import { type NamedThreePoint, threePointMarkers, threePointTable } from './three-point-table.js';
 import { tracesOf } from './traces.js';
 import { waysTable } from './ways-table.js';
+import { withProfiles } from './weak-parameters.js';
 
 export interface Task {
   readonly measured: readonly Measured[]; // free air first; all with a resonance
@@ -35,15 +36,16 @@ export function fittedOutput({ measured, settings, externals, context }: Task, b
   const findings = [
     ...before,
     ...wildFindings(whole.analysis.singles),
-    ...loadFindings(measured, resonance.analysis, propagated, settings),
+    ...loadFindings(measured, whole.analysis, propagated, settings),
     ...diameterFindings(propagated, externals),
     ...fitFindings(results, estimates),
   ];
+  const figures = figuresOf(withMisfit(estimates, results), circumstancesOf(results, externals));
   const points = threePointRows(results);
   const steps = stepsOf(results, estimates, externals);
   return {
     summary: sentenceOf(estimates, findings, steps),
-    figures: figuresOf(withMisfit(estimates, results), circumstancesOf(results, externals)),
+    figures: withProfiles(figures, results, () => context.checkpoint()),
     fit: fitOf(results),
     traces: tracesOf(results),
     markers: markersOf(points, estimates),

@@ -38,7 +38,7 @@ export function curveKind(
     });
     return { kind: 'driver', main, others };
   }
-  return flankKind(binned.lnZ, imaginaryOhm);
+  return flankKind(binned, imaginaryOhm);
 }
 
 interface Binned {
@@ -99,7 +99,7 @@ function atHighestRow(
  * the upper flank of a resonance below the sweep; |Z| that rises ever steeper to the upper end and turns real there is
  * the lower flank of one above. Everything else is a part, a network or nothing.
  */
-function flankKind(lnZ: readonly number[], imaginaryOhm: Float64Array | undefined): CurveKind {
+function flankKind({ lnF, lnZ }: Binned, imaginaryOhm: Float64Array | undefined): CurveKind {
   const first = lnZ[0] ?? 0;
   const last = lnZ.at(-1) ?? 0;
   const floor = Math.min(...lnZ);
@@ -111,9 +111,8 @@ function flankKind(lnZ: readonly number[], imaginaryOhm: Float64Array | undefine
     return { kind: 'peak-outside-sweep', side: 'below' };
   }
   const rise = last - first;
-  const quarter = Math.max(1, lnZ.length >> 3);
-  const endSlope = (last - (lnZ[lnZ.length - 1 - quarter] ?? 0)) / quarter;
-  const slopeOfInductor = Math.LN2 / BINS_PER_OCTAVE; // ln|Z| per bin, |Z| ∝ f
-  if (rise > Math.log(1.5) && endSlope > 1.3 * slopeOfInductor) return { kind: 'peak-outside-sweep', side: 'above' };
+  const before = Math.max(0, lnZ.length - 1 - Math.max(1, lnZ.length >> 3));
+  const endSlope = (last - (lnZ[before] ?? 0)) / ((lnF.at(-1) ?? 1) - (lnF[before] ?? 0)); // 1 for an inductor
+  if (rise > Math.log(1.5) && endSlope > 1.3) return { kind: 'peak-outside-sweep', side: 'above' };
   return { kind: 'not-a-driver' };
 }
