@@ -8,7 +8,7 @@ const FORCED: ChartTheme = {
   soft: 'CanvasText',
   line: 'CanvasText',
   edge: 'CanvasText',
-  grid: 'GrayText',
+  grid: 'Canvas', // the light lines would shout
   gridStrong: 'GrayText',
   focus: 'Highlight',
   within: 'CanvasText',
@@ -40,9 +40,18 @@ export function readChartTheme(): ChartTheme {
     uiFont: style.getPropertyValue('--font-ui').trim() || LIGHT_THEME.uiFont,
     numFont: style.getPropertyValue('--font-num').trim() || LIGHT_THEME.numFont,
   };
-  if (style.getPropertyValue('--color-sheet')) kept.set(key, theme); // not before the page has its styles
-  return theme;
+  const shown = window.matchMedia?.('(prefers-contrast: more)').matches ? withMoreContrast(theme) : theme;
+  if (style.getPropertyValue('--color-sheet')) kept.set(key, shown); // not before the page has its styles
+  return shown;
 }
+
+const withMoreContrast = (theme: ChartTheme): ChartTheme => ({
+  ...theme,
+  soft: theme.ink,
+  line: theme.edge,
+  grid: theme.gridStrong,
+  gridStrong: theme.edge,
+});
 
 /** Calls back when the page's theme, or forced colours, change. */
 export function watchChartTheme(changed: () => void): () => void {

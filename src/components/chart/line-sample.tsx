@@ -2,7 +2,7 @@ import type { CSSProperties } from 'react';
 import { lineStyle } from '../../../shared/drawing/palette.js';
 import { markerOutline } from '../../../shared/drawing/primitives.js';
 import { pathData } from '../../../shared/drawing/svg.js';
-import './chart.css';
+import './pictures.css';
 
 const WIDTH = 34;
 const HEIGHT = 18;

@@ -3,7 +3,7 @@ import { columnsOf, extentOf, type ImpedancePoints } from '../../../shared/drawi
 import { decimatedPath } from '../../../shared/drawing/curves/decimate.js';
 import { axisScale } from '../../../shared/drawing/scales/axis-scale.js';
 import { pathData } from '../../../shared/drawing/svg.js';
-import './chart.css';
+import './pictures.css';
 
 const WIDTH = 240;
 const HEIGHT = 72;

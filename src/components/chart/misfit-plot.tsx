@@ -3,7 +3,7 @@ import { describeMisfit, drawMisfit, type MisfitLine } from '../../../shared/dra
 import type { Trace } from '../../../shared/output.js';
 import { text } from '../../../shared/text.js';
 import { type Picture, usePicture } from './use-picture.js';
-import './chart.css';
+import './pictures.css';
 
 interface MisfitPlotProps {
   /** Traces of axis `residual`, relative to |Z|: one value, or real and imaginary part. */

@@ -2,7 +2,7 @@ import { useCallback, useId } from 'react';
 import { allLayers, chartSentence, drawChart } from '../../../shared/drawing/chart.js';
 import { type ChartContent, FITTED_CHART } from '../../../shared/drawing/chart-input.js';
 import { type Picture, usePicture } from './use-picture.js';
-import './chart.css';
+import './pictures.css';
 
 interface StillChartProps {
   readonly content: ChartContent;

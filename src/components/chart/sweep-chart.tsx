@@ -18,6 +18,7 @@ import { useChartStore } from './use-chart-store.js';
 import { type ChartRefs, useChartView } from './use-chart-view.js';
 import { useZoomHint } from './use-zoom-hint.js';
 import './chart.css';
+import './controls.css';
 
 /**
  * The chart of a sheet: magnitude with its phase strip, or real and imaginary parts, over one frequency axis.
