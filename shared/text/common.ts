@@ -68,6 +68,7 @@ export const common = {
   hoursAgo: (count: number) => `${count} h ago`,
   roleCannot: (role: string) =>
     `Your role here is ${role}, which does not include this. Ask an owner or a lead of the team.`,
+  lookOnly: 'This project is open to look at. Make one of your own to change and add things.',
   notVerified: 'Confirm your e-mail address first: open the link in the letter we sent.',
   roles: { owner: 'Owner', lead: 'Lead', member: 'Member', viewer: 'Viewer' },
   keysTitle: 'Keys',

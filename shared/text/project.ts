@@ -11,6 +11,7 @@ export const project = {
     `${plural(count, 'sweep', 'sweeps')} from your try-out ${count === 1 ? 'is' : 'are'} still in this browser only.`,
   openTry: 'Open it',
   projects: 'Projects',
+  demo: 'To look around in',
   noProjects: 'No projects yet',
   noProjectsHint: 'A project holds the sweeps, sheets and results of one piece of work.',
   newProject: 'New project',

@@ -8,6 +8,8 @@ export interface RequestOptions {
   signal?: AbortSignal;
   /** The version that was edited: another one on the server is refused with `version-conflict`. */
   version?: number;
+  /** Goes through even if the page is left meanwhile. For small things only. */
+  keepalive?: boolean;
 }
 
 const SIGNED_OUT = new Set(['not-signed-in', 'session-ended']);
@@ -43,6 +45,7 @@ async function send(method: string, path: string, body: unknown, options: Reques
   if (options.version !== undefined) headers.set('if-match', `"${options.version}"`);
   const init: RequestInit = { method, headers, credentials: 'same-origin' };
   if (body !== undefined) init.body = JSON.stringify(body);
+  if (options.keepalive) init.keepalive = true;
   if (options.signal) init.signal = options.signal;
   const answer = await fetch(`/api${path}`, init).catch((error: unknown) => {
     if (options.signal?.aborted) throw error;

@@ -3,7 +3,7 @@ import { type Me, MeSchema } from '../../shared/contracts/account.js';
 import type { Team } from '../../shared/contracts/team.js';
 import { api } from './api.js';
 import { joinAccountPreferences } from './preferences.js';
-import { queryClient } from './query-client.js';
+import { sendPreferences } from './send-preferences.js';
 import { session } from './session.js';
 
 export const meQuery = queryOptions({
@@ -11,9 +11,7 @@ export const meQuery = queryOptions({
   queryFn: async ({ signal }): Promise<Me> => {
     const me = await api.get('/me', MeSchema, { signal });
     session.signedIn();
-    joinAccountPreferences(me.preferences, (preferences) => {
-      void api.patch('/me', { preferences }, MeSchema).then((saved) => queryClient.setQueryData(['me'], saved));
-    });
+    joinAccountPreferences(me.preferences, sendPreferences);
     return me;
   },
   staleTime: 60_000,

@@ -21,9 +21,9 @@ export const projectQuery = (projectId: string) =>
     queryFn: ({ signal }) => api.get(`/projects/${projectId}`, ProjectSchema, { signal }),
   });
 
-/** Why this person cannot do it, in words; undefined where they can. */
+/** Why this person cannot do it, in words; undefined where they can. Without a team of theirs they only look. */
 export function reasonAgainst(action: Action, team: Team | undefined, isVerified: boolean): string | undefined {
-  if (team === undefined) return undefined; // not known yet: the server decides
+  if (team === undefined) return action.endsWith(':read') ? undefined : text.common.lookOnly;
   if (!mayDo(team.role, action)) return text.common.roleCannot(text.common.roles[team.role]);
   return isVerified || action.endsWith(':read') ? undefined : text.common.notVerified;
 }

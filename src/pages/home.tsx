@@ -17,7 +17,7 @@ import { AddSweepsDialog } from '../features/home/add-sweeps-dialog.js';
 import { RecentSheets } from '../features/home/recent-sheets.js';
 import { WaitingList } from '../features/home/waiting-list.js';
 import { NewProjectDialog } from '../features/projects/new-project-dialog.js';
-import { ProjectList } from '../features/projects/project-list.js';
+import { DemoProject, ProjectList } from '../features/projects/project-list.js';
 import { handFiles } from '../lib/handed-files.js';
 import { chosenTeam, meQuery } from '../lib/me.js';
 import { projectsQuery, reasonAgainst } from '../lib/projects.js';
@@ -96,6 +96,7 @@ function HomeSections({ me, projects, newButton }: { me: Me; projects: Project[]
           <ProjectList projects={projects} />
         )}
       </Section>
+      <DemoProject projectId={me.demoProjectId} own={projects} />
       {projects.length > 0 && (
         <Section title={text.project.recentSheets}>
           <RecentSheets projects={projects} />

@@ -114,7 +114,7 @@ test('an item keeps its published figures in the units they are printed in', asy
   await page.getByLabel('Name', { exact: true }).fill('Mid-woofer 1');
   await page.getByRole('button', { name: 'Make the item' }).click();
   await expect(page.getByRole('heading', { name: 'Mid-woofer 1', level: 1 })).toBeVisible();
-  await page.getByLabel('Figure').selectOption('Vas');
+  await page.getByLabel('Figure', { exact: true }).selectOption('Vas');
   await page.getByLabel('Value').fill('0.5 ft³');
   await expect(page.getByText('Understood as 14.16 L')).toBeVisible(); // 0.5 · 0.3048³ m³, the foot by definition
   await page.getByLabel('Tolerance (%)').fill('15');

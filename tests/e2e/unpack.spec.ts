@@ -52,7 +52,7 @@ test('forty files at once each get their own state, comma and point decimals are
   await expect(page).toHaveURL(/\/sheet\//, { timeout: 90_000 });
   expect(await sweepsOf(page, project)).toHaveLength(40);
   await page.getByRole('button', { name: 'Undo', exact: true }).last().click();
-  await expect(page.getByText(/40\sSweeps taken back\.|40\ssweeps taken back\./)).toBeVisible();
+  await expect(page.getByText(/40\ssweeps taken back\./)).toBeVisible();
   expect(await sweepsOf(page, project)).toEqual([]);
   expect(complaints).toEqual([]);
 });
@@ -131,7 +131,7 @@ test('the source comes back byte for byte, with its fingerprint', async ({ page 
   await page.getByRole('button', { name: 'Add 1 sweep' }).click({ timeout: 20_000 });
   await expect(page).toHaveURL(/\/sheet\//, { timeout: 60_000 });
   await page.goto(project);
-  await page.getByRole('link', { name: 'utf16le' }).click();
+  await page.getByRole('region', { name: 'Ledger' }).getByRole('link', { name: 'utf16le' }).click();
   await page.getByRole('tab', { name: 'Facts' }).click();
   const downloading = page.waitForEvent('download');
   await page.getByRole('button', { name: 'Download the source file' }).click();
@@ -173,7 +173,7 @@ test('a file of 30 MB leaves the page responsive, and its reading can be stopped
   await openUnpack(page);
   const path = join(folder, 'long.csv');
   const rows = table(20_000).split('\n').slice(1, -1);
-  writeFileSync(path, Array.from({ length: 80 }, () => rows.join('\n')).join('\n'));
+  writeFileSync(path, Array.from({ length: 100 }, () => rows.join('\n')).join('\n'));
   expect(readFileSync(path).length).toBeGreaterThan(30_000_000);
   await page.evaluate(() => {
     const held = window as unknown as { longTasks: number[] };
@@ -228,7 +228,7 @@ test('a stored sweep is read again by another rule, as a new revision', async ({
   await page.getByRole('button', { name: 'Add 1 sweep' }).click({ timeout: 20_000 });
   await expect(page).toHaveURL(/\/sheet\//, { timeout: 60_000 });
   await page.goto(project);
-  await page.getByRole('link', { name: 'magnitude-only' }).click();
+  await page.getByRole('region', { name: 'Ledger' }).getByRole('link', { name: 'magnitude-only' }).click();
   await page.getByRole('tab', { name: 'Reading rule' }).click();
   await page.getByLabel('Unit of impedance').selectOption('kilohm');
   await page.getByRole('button', { name: 'Read again' }).click();

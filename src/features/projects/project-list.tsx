@@ -1,8 +1,23 @@
+import { useQuery } from '@tanstack/react-query';
 import { Link } from 'react-router-dom';
 import type { Project } from '../../../shared/contracts/project.js';
 import { text } from '../../../shared/text.js';
+import { Section } from '../../components/section.js';
 import { StatusWord } from '../../components/status-word.js';
 import { When } from '../../components/when.js';
+import { projectQuery } from '../../lib/projects.js';
+
+/** The invented project that every person may look at, unless it stands among their own already. */
+export function DemoProject({ projectId, own }: { projectId: string | null; own: readonly Project[] }) {
+  const isNeeded = projectId !== null && !own.some(({ id }) => id === projectId);
+  const { data: project } = useQuery({ ...projectQuery(projectId ?? ''), enabled: isNeeded });
+  if (!isNeeded || !project) return null;
+  return (
+    <Section title={text.project.demo}>
+      <ProjectList projects={[project]} />
+    </Section>
+  );
+}
 
 export function ProjectList({ projects }: { projects: readonly Project[] }) {
   return (

@@ -54,7 +54,7 @@ function SheetRow({ sheet }: { sheet: Sheet }) {
         aria-label={text.common.deleteNamed(sheet.name)}
         reason={store.readOnlyReason}
         isBusy={remove.isPending}
-        onClick={() => remove.mutate(sheet, { onSuccess: onDeleted })}
+        onClick={() => void remove.mutateAsync(sheet).then(onDeleted, () => {})}
       />
       {remove.isError && <ErrorBar error={remove.error} />}
     </li>

@@ -5,7 +5,7 @@ import { DropPage } from '../../components/drop-page.js';
 import { showToast } from '../../components/toast-store.js';
 import { takeHandedFiles } from '../../lib/handed-files.js';
 import { useProjectStore } from '../../lib/project-store/store-context.js';
-import { useBatch, useFetchAgain } from '../../lib/project-store/store-mutations.js';
+import { useFetchAgain } from '../../lib/project-store/store-mutations.js';
 import { warmReaders } from '../../workers/pool.js';
 import { EntryDetails } from './entry-details.js';
 import { FileList } from './file-list.js';
@@ -81,19 +81,20 @@ export function Unpack({ onAdded }: UnpackProps) {
 
 /** Says what was added, with the way back, and fetches the lists again. */
 function useAnnounce(onAdded: (batch: StoredBatch) => void) {
-  const batchChange = useBatch();
+  const store = useProjectStore();
   const fetchAgain = useFetchAgain('sweeps');
   return async (batch: StoredBatch) => {
     const count = batch.sweeps.length;
+    const takeBack = async () => {
+      await store.undoBatch(batch.batchId);
+      showToast({ message: text.unpack.takenBack(count) });
+      await fetchAgain();
+    };
     showToast({
       message: text.unpack.added(count),
       action: {
         label: text.common.undo,
-        run: () =>
-          batchChange.mutate(
-            { batchId: batch.batchId, isBack: false },
-            { onSuccess: () => showToast({ message: text.unpack.takenBack(count) }) },
-          ),
+        run: () => void takeBack().catch((error: Error) => showToast({ message: error.message, tone: 'fault' })),
       },
     });
     await fetchAgain();

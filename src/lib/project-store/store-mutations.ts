@@ -86,14 +86,3 @@ export function useReread() {
     onSuccess: () => fetchAgain(client, store, 'sweeps'),
   });
 }
-
-/** Takes a whole drop of files back or brings it back. */
-export function useBatch() {
-  const store = useProjectStore();
-  const client = useQueryClient();
-  return useMutation({
-    mutationFn: ({ batchId, isBack }: { batchId: string; isBack: boolean }) =>
-      isBack ? store.restoreBatch(batchId) : store.undoBatch(batchId),
-    onSuccess: () => fetchAgain(client, store, 'sweeps'),
-  });
-}
