@@ -4,7 +4,14 @@ import { logMisfit } from '../acoustics/sweep-term.js';
 import type { RunContext } from '../kit/calculator.js';
 import type { LeastSquaresFit } from '../numerics/least-squares-problem.js';
 import { type Candidate, type ModelChoice, modelChoices, modelName, type Ranked, ranked } from './candidates.js';
-import { type FitOptions, freeAirModels, loadedFit } from './free-air-models.js';
+import {
+  type FitOptions,
+  type FreeAirModels,
+  freeAirModels,
+  LEAST_EFFECTIVE,
+  type LeftBehind,
+  loadedFit,
+} from './free-air-models.js';
 import { type FitSweep, finalFit, type JointSetup, type JointShape, jointCandidate, valuesById } from './joint-fit.js';
 import { jointShape } from './load-checks.js';
 import type { Measured } from './measured.js';
@@ -24,6 +31,7 @@ export interface Analysis {
   readonly setup: JointSetup; // the sweeps in use, in their true roles; free air first
   readonly ranking: readonly Ranked<Candidate<JointDriverProblem>>[];
   readonly effectiveRows: number;
+  readonly behind: readonly LeftBehind[]; // models dropped after the free-air sweep
   readonly outcomes: readonly [Outcome, ...Outcome[]]; // the chosen model first
   readonly structures: readonly ResidualStructure[]; // by sweep
   readonly verdict: SeriesVerdict;
@@ -54,7 +62,7 @@ export function analyse(measured: readonly Measured[], settings: DriverFitSettin
   const righted = exchanged ? inDeclaredRoles(exchangedFits(singles, exchanged), measured) : singles;
   const doubtful = verdict.isNamedSurely ? righted : withDoubtfulMasses(righted, verdict.inconsistent);
   const used = doubtful.filter((_, i) => !(verdict.isNamedSurely && verdict.inconsistent.includes(i)));
-  return { ...fitTogether(used, models.values, job), verdict, singles: righted };
+  return { ...fitTogether(used, models, job), verdict, singles: righted };
 }
 
 const declaredOf = ({ massKg, massUncertaintyKg, role }: Measured) => ({
@@ -96,21 +104,21 @@ function resistancePrior({ dcResistance, dcResistanceUncertainty }: DriverFitSet
   return [{ id: 'Re', value: dcResistance, uncertainty }];
 }
 
-type FreeAirValues = ReadonlyMap<string, Readonly<Record<string, number>>>;
-
 function fitTogether(
   singles: readonly SingleFit[],
-  freeAir: FreeAirValues,
+  freeAir: FreeAirModels,
   { settings, options, priors }: Job,
 ): Omit<Analysis, 'verdict' | 'singles'> {
-  const { context, choices } = options;
+  const { context } = options;
+  const behind = new Set(freeAir.behind.map(({ choice }) => modelName(choice)));
+  const choices = options.choices.filter((choice) => !behind.has(modelName(choice)));
   const checkpoint = (): void => context.checkpoint();
   const sweeps = singles.map(
     (alone): FitSweep => ({ measured: alone.measured, rows: alone.rows, noise: alone.noise, alone, misfitSquares: 0 }),
   );
   const plain: JointShape = { boxKind: 'sealed', isBoxMassFree: false, hasOwnRe: singles.map(() => false) };
   const leader = singles[0]?.choice ?? choices[0];
-  const valuesOf = (choice: ModelChoice) => freeAir.get(modelName(choice)) ?? {};
+  const valuesOf = (choice: ModelChoice) => freeAir.values.get(modelName(choice)) ?? {};
   const shape = leader
     ? jointShape(leader, { sweeps, shape: plain, priors }, valuesOf(leader), settings, checkpoint)
     : plain;
@@ -136,7 +144,14 @@ function fitTogether(
     });
   const [chosen, ...others] = outcomes;
   if (!chosen) throw new Error('driver-fit has no model to try');
-  return { setup: finalSetup, ranking, effectiveRows, outcomes: [chosen, ...others], structures };
+  return {
+    setup: finalSetup,
+    ranking,
+    effectiveRows,
+    behind: freeAir.behind,
+    outcomes: [chosen, ...others],
+    structures,
+  };
 }
 
 /** ρ of one sweep of a joint fit, over its rows. */
@@ -158,7 +173,7 @@ const rowsOf = ({ rows }: FitSweep): number =>
 
 function effectiveCount(sweeps: readonly FitSweep[], structures: readonly ResidualStructure[]): number {
   const total = sweeps.reduce((sum, sweep, i) => sum + rowsOf(sweep) / (structures[i]?.pointsPerEffective ?? 1), 0);
-  return Math.max(total, 24);
+  return Math.max(total, LEAST_EFFECTIVE);
 }
 
 /** With σ of one component of one point as this model leaves it, stretched by √τ where the misfit is correlated. */

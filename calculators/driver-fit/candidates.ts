@@ -54,7 +54,7 @@ export function withinReach<Problem extends LeastSquaresProblem>(
   fsHz: number,
 ): Problem {
   const bounded = (parameter: FitParameter): FitParameter => {
-    if (parameter.id === 'Gss' && !hasRss) return { ...parameter, lower: 0, held: true };
+    if (parameter.id === 'Gss' && !hasRss) return { ...parameter, logScaled: false, lower: 0, held: true };
     if (parameter.id === 'kappa') return { ...parameter, lower: 1e-3, upper: LARGEST_KAPPA };
     if (parameter.id !== 'tau') return parameter;
     const tauOf = (ratio: number): number => 1 / (2 * Math.PI * ratio * fsHz);

@@ -12,12 +12,22 @@ import { type SingleFit, singleFit } from './single-fit.js';
 export interface FreeAirModels {
   readonly best: SingleFit;
   readonly values: ReadonlyMap<string, Readonly<Record<string, number>>>; // by model name, then parameter id
+  readonly behind: readonly LeftBehind[];
+}
+/** A model so far behind the best in free air that no joint fit could bring it back. */
+export interface LeftBehind {
+  readonly choice: ModelChoice;
+  readonly bic: number; // above the best, over the rows that are independent
+  readonly squares: number; // Σ|ln(Z/model)|² over the rows
+  readonly freeParameters: number;
 }
 export interface FitOptions {
   readonly choices: readonly ModelChoice[];
   readonly robust: boolean;
   readonly context: RunContext;
 }
+
+export const LEAST_EFFECTIVE = 24; // rows that count as independent, however correlated the misfit
 
 const STARTS: Readonly<Record<SuspensionModel, (fsHz: number) => number[]>> = {
   constant: () => [],
@@ -42,10 +52,26 @@ export function freeAirModels(measured: Measured, { choices, robust, context }: 
     if (!leader) throw new Error('driver-fit has no model to try');
     const best = singleFit(measured, leader, rough, leader.fit.values, { robust, checkpoint });
     const isSettled = round === 1 || best.keep.every((flag, i) => flag === rough.keep[i]);
-    if (isSettled) return { best, values: byId(candidates) };
+    if (isSettled) return { best, values: byId(candidates), behind: leftBehind(candidates, best) };
     rough = { ...rough, keep: best.keep, wild: best.wild };
     near = { model: { ...leader, load: FREE_AIR }, values: best.fit.values };
   }
+}
+
+const FAR_BEHIND = 60; // of BIC: a weight of 1e-13
+
+function leftBehind(candidates: readonly Candidate[], { structure, rows }: SingleFit): LeftBehind[] {
+  const total = (rows.data.hasPhase ? 2 : 1) * rows.counts.filter((count) => count > 0).length;
+  const ranking = ranked(candidates, Math.max(total / structure.pointsPerEffective, LEAST_EFFECTIVE));
+  const least = Math.min(...ranking.map(({ bic }) => bic));
+  return ranking
+    .filter(({ bic }) => bic > least + FAR_BEHIND)
+    .map(({ candidate, bic }) => ({
+      choice: candidate,
+      bic: bic - least,
+      squares: candidate.squares,
+      freeParameters: candidate.freeParameters,
+    }));
 }
 
 function fitAll(

@@ -1,16 +1,15 @@
 import type { Table } from '../../shared/output.js';
+import type { Analysis } from './analysis.js';
 import type { BandResult } from './bands.js';
 import { coilName } from './candidates.js';
 import { roundedHz } from './figures.js';
+import type { LeftBehind } from './free-air-models.js';
+
+type Row = Table['rows'][number];
 
 /** Every model tried, best first: what the choice rests on. */
 export function modelTable({ analysis, upToHz }: BandResult): Table {
-  const { ranking, effectiveRows } = analysis;
-  const best = Math.min(...ranking.map(({ bic }) => bic));
-  const values = (ids: readonly string[], entry: (typeof ranking)[number]): (number | null)[] =>
-    ids.map(
-      (id) => entry.candidate.fit.values[entry.candidate.problem.parameters.findIndex((p) => p.id === id)] ?? null,
-    );
+  const { ranking, behind } = analysis;
   return {
     id: upToHz === null ? 'models' : `models-below-${Math.round(upToHz)}`,
     title: upToHz === null ? 'Models compared' : `Models compared below ${roundedHz(upToHz)}`,
@@ -32,37 +31,69 @@ export function modelTable({ analysis, upToHz }: BandResult): Table {
       { id: 'remark', label: 'Remark', kind: 'text' },
       { id: 'isChosen', label: 'Chosen', kind: 'boolean' },
     ],
-    rows: ranking.map((entry, i) => {
-      const [re, fs, qms, qes] = values(['Re', 'fs', 'Qms', 'Qes'], entry);
-      return {
-        coil: coilName(entry.candidate),
-        suspension: entry.candidate.suspension,
-        bic: entry.bic,
-        deltaBic: entry.bic - best,
-        aicc: entry.aicc,
-        misfit: misfitOf(
-          entry,
-          analysis.setup.sweeps.map(({ alone }) => alone.noise),
-        ),
-        weight: entry.weight,
-        parameters: entry.candidate.freeParameters,
-        Re: re ?? null,
-        fs: fs ?? null,
-        Qms: qms ?? null,
-        Qes: qes ?? null,
-        rows: effectiveRows,
-        status: entry.candidate.fit.status,
-        remark: entry.sameAs ? `Has shrunk to ${entry.sameAs}` : '',
-        isChosen: i === 0,
-      };
-    }),
+    rows: [
+      ...ranking.map((_, place) => fittedRow(analysis, place)),
+      ...behind.map((model) => behindRow(analysis, model)),
+    ],
+  };
+}
+
+function fittedRow({ ranking, effectiveRows, setup }: Analysis, place: number): Row {
+  const best = Math.min(...ranking.map(({ bic }) => bic));
+  const { candidate, bic, aicc, weight, sameAs } = ranking[place] ?? (ranking[0] as (typeof ranking)[number]);
+  const fitted = (id: string): number | null => {
+    const k = candidate.problem.parameters.findIndex((parameter) => parameter.id === id);
+    return candidate.fit.values[k] ?? null;
+  };
+  return {
+    coil: coilName(candidate),
+    suspension: candidate.suspension,
+    bic,
+    deltaBic: bic - best,
+    aicc,
+    misfit: misfitOf(candidate.squares, candidate, setup),
+    weight,
+    parameters: candidate.freeParameters,
+    Re: fitted('Re'),
+    fs: fitted('fs'),
+    Qms: fitted('Qms'),
+    Qes: fitted('Qes'),
+    rows: effectiveRows,
+    status: candidate.fit.status,
+    remark: sameAs ? `Has shrunk to ${sameAs}` : '',
+    isChosen: place === 0,
+  };
+}
+
+function behindRow({ setup }: Analysis, { choice, bic, squares, freeParameters }: LeftBehind): Row {
+  const free = setup.sweeps[0]?.rows.counts.reduce((a, b) => a + b, 0) ?? 1;
+  return {
+    coil: coilName(choice),
+    suspension: choice.suspension,
+    bic: null,
+    deltaBic: bic,
+    aicc: null,
+    misfit: Math.sqrt(squares / free),
+    weight: 0,
+    parameters: freeParameters,
+    Re: null,
+    fs: null,
+    Qms: null,
+    Qes: null,
+    rows: null,
+    status: '',
+    remark: 'Far behind in free air',
+    isChosen: false,
   };
 }
 
 /** Relative misfit, rms of |ln(Z/model)|: weighted rows in units of the noise, turned back by the mean noise. */
-function misfitOf({ candidate }: BandResult['analysis']['ranking'][number], noises: readonly number[]): number {
-  const rows = candidate.problem.activeCount ?? 1;
-  const meanSquare = noises.reduce((sum, noise) => sum + noise * noise, 0) / noises.length;
-  const perPoint = candidate.problem.terms[0]?.groupSize ?? 2;
-  return Math.sqrt((candidate.squares / rows) * meanSquare * perPoint);
+function misfitOf(
+  squares: number,
+  { problem }: Analysis['ranking'][number]['candidate'],
+  { sweeps }: Analysis['setup'],
+): number {
+  const rows = problem.activeCount ?? 1;
+  const meanSquare = sweeps.reduce((sum, { alone }) => sum + alone.noise ** 2, 0) / sweeps.length;
+  return Math.sqrt((squares / rows) * meanSquare * (problem.terms[0]?.groupSize ?? 2));
 }
