@@ -93,6 +93,7 @@ export const sheet = {
   results: {
     empty: 'No results yet.',
     emptyHelp: 'These calculators fit what is drawn.',
+    noneFits: 'No calculator fits what is drawn yet. Draw another sweep, or say in its details how it was held.',
     missing: (what: string) => `Still missing: ${what}`,
     addCard: (title: string) => `Add ${title}`,
     run: 'Run',

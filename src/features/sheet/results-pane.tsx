@@ -61,7 +61,10 @@ function Suggestions({ isEmpty }: { isEmpty: boolean }) {
   if (!isEmpty) return <div className="flex flex-wrap gap-2">{buttons}</div>;
   return (
     <EmptyState title={words.empty} action={buttons}>
-      {drawn.length > 0 ? words.emptyHelp : text.sheet.chart.nothingDrawnHelp}
+      {emptyWords(
+        drawn.length,
+        offers.some(({ fit }) => !fit.missing),
+      )}
     </EmptyState>
   );
 }
@@ -77,4 +80,9 @@ function fitOf(definition: CalculatorDefinition, drawn: readonly SweepRow[]) {
   );
   const what = missing.map(({ label }) => label).join(', ');
   return { inputs, missing: what ? words.missing(what) : undefined };
+}
+
+function emptyWords(drawnCount: number, isAnyFit: boolean): string {
+  if (drawnCount === 0) return text.sheet.chart.nothingDrawnHelp;
+  return isAnyFit ? words.emptyHelp : words.noneFits;
 }
