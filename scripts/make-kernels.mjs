@@ -84,7 +84,7 @@ const COILS = [
       { re: '-w * qi', im: 'w * qr', factor: 'leb' },
       { re: 'yl * a7i', im: '-yl * a7r' }, // column 7 stands first in the code: a7 = P²q
       { re: 'yk * (a7r + a7i)', im: 'yk * (a7i - a7r)' },
-      { ...product('sqr', 'sqi', 'qr', 'qi'), factor: '-1' },
+      { ...product('sqr', 'sqi', 'qr', 'qi'), factor: '-gss' },
     ],
   },
 ];

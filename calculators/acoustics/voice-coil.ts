@@ -46,7 +46,7 @@ const PARAMETERS: Readonly<Record<CoilModel, readonly FitParameter[]>> = {
     logged('Leb', 1e-9, 0.1),
     logged('Le', 1e-7, 10),
     logged('K', 1e-6, 100),
-    { id: 'Gss', lower: NO_SHUNT, upper: 1e3, typical: 1e-2, maxStep: 0.1 },
+    logged('Gss', NO_SHUNT, 1e2),
   ],
 };
 
@@ -149,12 +149,12 @@ const semiInductance: Impedance = (values, at, { omega, rootHalfOmega }, z, d) =
     z.re[i] = re;
     z.im[i] = w * leb + im;
     if (!d) continue;
-    const sqRe = re * re - im * im; // ∂P/∂ln x = P² × (admittance of x); ∂P/∂Gss = −P²
+    const sqRe = re * re - im * im; // ∂P/∂ln x = P² × (admittance of x), with − for Gss
     const sqIm = 2 * re * im;
     put(d[0]!, i, 0, w * leb);
     put(d[1]!, i, sqIm * yl, -sqRe * yl);
     put(d[2]!, i, (sqRe + sqIm) * yk, (sqIm - sqRe) * yk);
-    put(d[3]!, i, -sqRe, -sqIm);
+    put(d[3]!, i, -sqRe * yr, -sqIm * yr);
   }
 };
 
@@ -189,7 +189,7 @@ export function coilFigures(model: CoilModel, values: ArrayLike<number>, at: num
     const value = values[at + k]!;
     if (id === 'Gss') {
       const isThere = value > NO_SHUNT;
-      if (isThere) gradient[k] = -1 / (value * value);
+      if (isThere) gradient[k] = -1 / value;
       return { id: 'Rss', unit: 'Ω', value: isThere ? 1 / value : null, gradient };
     }
     if (!id.endsWith('1k')) {

@@ -62,8 +62,6 @@ class Iteration {
   private readonly high: Float64Array;
   private readonly toLower: Float64Array; // distance to the bounds, infinite where there is none
   private readonly toUpper: Float64Array;
-  private readonly openLow: Float64Array; // no limits, for the undamped step
-  private readonly openHigh: Float64Array;
   private readonly damping: Float64Array;
   private readonly active: Uint8Array;
   private readonly solver: DampedStep;
@@ -86,10 +84,8 @@ class Iteration {
     this.step = new Float64Array(this.p);
     this.low = new Float64Array(this.p);
     this.high = new Float64Array(this.p);
-    this.openLow = new Float64Array(this.p).fill(Number.NEGATIVE_INFINITY);
-    this.openHigh = new Float64Array(this.p).fill(Number.POSITIVE_INFINITY);
-    this.toLower = this.openLow.slice();
-    this.toUpper = this.openHigh.slice();
+    this.toLower = new Float64Array(this.p).fill(Number.NEGATIVE_INFINITY);
+    this.toUpper = new Float64Array(this.p).fill(Number.POSITIVE_INFINITY);
     this.damping = new Float64Array(this.p);
     this.active = new Uint8Array(this.p);
     this.solver = new DampedStep(this.p);
@@ -134,9 +130,9 @@ class Iteration {
   }
 
   /**
-   * The relative offset: length of the residual's part in the tangent plane over the length of the rest, each per
-   * degree of freedom. Also arrived where the undamped step is below the rounding of the parameters, or the residual
-   * vanishes.
+   * The relative offset: length of the residual's part in the tangent plane (as far as one step may go in it) over the
+   * length of the rest, each per degree of freedom. Also arrived where the undamped step is below the rounding of the
+   * parameters, or the residual vanishes.
    */
   private hasArrived(): boolean {
     this.chooseActive();
@@ -150,10 +146,10 @@ class Iteration {
       this.offset = 0;
       return true;
     }
-    const { step, solver, damping } = this;
-    let decrease = solver.solve(sums, factor, this.active, 0, damping, this.openLow, this.openHigh, step);
-    if (!(decrease >= 0))
-      decrease = solver.solve(sums, factor, this.active, 1e-9, damping, this.openLow, this.openHigh, step);
+    const { step, solver, damping, low, high } = this;
+    this.setBox();
+    let decrease = solver.solve(sums, factor, this.active, 0, damping, low, high, step);
+    if (!(decrease >= 0)) decrease = solver.solve(sums, factor, this.active, 1e-9, damping, low, high, step);
     if (!(decrease >= 0)) return false;
     const rest = Math.max(2 * sums.cost - 2 * decrease, 0);
     const restDof = Math.max(this.activeRows - free, 1);
@@ -169,7 +165,6 @@ class Iteration {
   /** One accepted step; false when none is found. */
   private advance(): boolean {
     const { evaluation, step, solver } = this;
-    this.setBox();
     for (let refusals = 0; refusals < MOST_REFUSALS; refusals++) {
       const { sums } = evaluation;
       const predicted = solver.solve(
@@ -204,7 +199,6 @@ class Iteration {
     const { evaluation, step } = this;
     for (let round = 0; round < MOST_POLISHING && this.offset < LOOSE_OFFSET; round++) {
       const previous = { offset: this.offset, cost: evaluation.sums.cost, values: this.values.slice() };
-      this.setBox();
       const { sums, factor } = evaluation;
       this.solver.solve(sums, factor, this.active, 0, this.damping, this.low, this.high, step);
       if (!step.every(Number.isFinite) || !this.moveTrial()) return;
@@ -239,7 +233,8 @@ class Iteration {
   /** Limits of each component: the bounds, and the largest step of its own. */
   private setBox(): void {
     for (let k = 0; k < this.p; k++) {
-      const { lower, upper, logScaled, maxStep } = this.parameters[k]!;
+      const { held, lower, upper, logScaled, maxStep } = this.parameters[k]!;
+      if (held) continue;
       const value = this.values[k]!;
       const most = maxStep ?? (logScaled ? LOG_STEP : this.linearStep(k));
       if (lower !== undefined) this.toLower[k] = logScaled ? Math.log(lower / value) : lower - value;
@@ -319,11 +314,13 @@ function checkArguments(problem: LeastSquaresProblem, start: ArrayLike<number>, 
     refuse('The blocks do not add up to the number of residuals.', 'blocks');
   if (options.lossScale !== undefined && !(options.lossScale > 0))
     refuse('The scale of a robust loss must be above 0.', 'lossScale');
-  parameters.forEach(({ id, logScaled, lower, upper }, k) => {
+  parameters.forEach(({ id, held, logScaled, lower, upper }, k) => {
     const value = start[k]!;
     if (!Number.isFinite(value)) refuse(`The starting value of ${id} is not a number.`, id);
-    if (logScaled && !(value > 0)) refuse(`${id} is fitted on a logarithmic scale, so it must start above 0.`, id);
+    if (held) return;
     if (logScaled && lower !== undefined && !(lower > 0)) refuse(`The lower bound of ${id} must be above 0.`, id);
+    if (logScaled && !(Math.max(value, lower ?? 0) > 0))
+      refuse(`${id} is fitted on a logarithmic scale, so it must start above 0.`, id);
     if (lower !== undefined && upper !== undefined && !(lower < upper))
       refuse(`The bounds of ${id} leave no room: ${lower} to ${upper}.`, id);
   });

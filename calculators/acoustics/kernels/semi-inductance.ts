@@ -71,16 +71,16 @@ export function semiInductanceConstant(v: ArrayLike<number>, data: KernelData, w
   }
   out.cost = 0.5 * cost;
   const g = out.gradient, h = out.hessian;
-  g[0] = g0; g[1] = g1; g[2] = g2 * (-1 / qms); g[3] = g3 * -1; g[7] = g7 * -1;
+  g[0] = g0; g[1] = g1; g[2] = g2 * (-1 / qms); g[3] = g3 * -1; g[7] = g7 * -gss;
   g[4] = g4 * leb; g[5] = g5; g[6] = g6;
   h[0] = h0_0; h[8] = h1_0; h[9] = h1_1; h[16] = h2_0 * (-1 / qms); h[17] = h2_1 * (-1 / qms);
   h[18] = h2_2 * (-1 / qms) * (-1 / qms); h[24] = h3_0 * -1; h[25] = h3_1 * -1; h[26] = h3_2 * -1 * (-1 / qms); h[27] = h3_3 * -1 * -1;
   h[32] = h4_0 * leb; h[33] = h4_1 * leb; h[34] = h4_2 * leb * (-1 / qms); h[35] = h4_3 * leb * -1; h[36] = h4_4 * leb * leb;
   h[40] = h5_0; h[41] = h5_1; h[42] = h5_2 * (-1 / qms); h[43] = h5_3 * -1; h[44] = h5_4 * leb;
   h[45] = h5_5; h[48] = h6_0; h[49] = h6_1; h[50] = h6_2 * (-1 / qms); h[51] = h6_3 * -1;
-  h[52] = h6_4 * leb; h[53] = h6_5; h[54] = h6_6; h[56] = h7_0 * -1; h[57] = h7_1 * -1;
-  h[58] = h7_2 * -1 * (-1 / qms); h[59] = h7_3 * -1 * -1; h[60] = h7_4 * -1 * leb; h[61] = h7_5 * -1; h[62] = h7_6 * -1;
-  h[63] = h7_7 * -1 * -1;
+  h[52] = h6_4 * leb; h[53] = h6_5; h[54] = h6_6; h[56] = h7_0 * -gss; h[57] = h7_1 * -gss;
+  h[58] = h7_2 * -gss * (-1 / qms); h[59] = h7_3 * -gss * -1; h[60] = h7_4 * -gss * leb; h[61] = h7_5 * -gss; h[62] = h7_6 * -gss;
+  h[63] = h7_7 * -gss * -gss;
 }
 
 export function semiInductanceCreep(v: ArrayLike<number>, data: KernelData, weights: Float64Array, loss: Loss, out: NormalSums): void {
@@ -162,17 +162,17 @@ export function semiInductanceCreep(v: ArrayLike<number>, data: KernelData, weig
   }
   out.cost = 0.5 * cost;
   const g = out.gradient, h = out.hessian;
-  g[0] = g0; g[1] = g1; g[2] = g2 * (-1 / qms); g[3] = g3 * -1; g[7] = g7 * -1;
+  g[0] = g0; g[1] = g1; g[2] = g2 * (-1 / qms); g[3] = g3 * -1; g[7] = g7 * -gss;
   g[4] = g4 * leb; g[5] = g5; g[6] = g6; g[8] = g8 * (1 / Math.LN10);
   h[0] = h0_0; h[9] = h1_0; h[10] = h1_1; h[18] = h2_0 * (-1 / qms); h[19] = h2_1 * (-1 / qms);
   h[20] = h2_2 * (-1 / qms) * (-1 / qms); h[27] = h3_0 * -1; h[28] = h3_1 * -1; h[29] = h3_2 * -1 * (-1 / qms); h[30] = h3_3 * -1 * -1;
   h[36] = h4_0 * leb; h[37] = h4_1 * leb; h[38] = h4_2 * leb * (-1 / qms); h[39] = h4_3 * leb * -1; h[40] = h4_4 * leb * leb;
   h[45] = h5_0; h[46] = h5_1; h[47] = h5_2 * (-1 / qms); h[48] = h5_3 * -1; h[49] = h5_4 * leb;
   h[50] = h5_5; h[54] = h6_0; h[55] = h6_1; h[56] = h6_2 * (-1 / qms); h[57] = h6_3 * -1;
-  h[58] = h6_4 * leb; h[59] = h6_5; h[60] = h6_6; h[63] = h7_0 * -1; h[64] = h7_1 * -1;
-  h[65] = h7_2 * -1 * (-1 / qms); h[66] = h7_3 * -1 * -1; h[67] = h7_4 * -1 * leb; h[68] = h7_5 * -1; h[69] = h7_6 * -1;
-  h[70] = h7_7 * -1 * -1; h[72] = h8_0 * (1 / Math.LN10); h[73] = h8_1 * (1 / Math.LN10); h[74] = h8_2 * (1 / Math.LN10) * (-1 / qms); h[75] = h8_3 * (1 / Math.LN10) * -1;
-  h[76] = h8_4 * (1 / Math.LN10) * leb; h[77] = h8_5 * (1 / Math.LN10); h[78] = h8_6 * (1 / Math.LN10); h[79] = h8_7 * (1 / Math.LN10) * -1; h[80] = h8_8 * (1 / Math.LN10) * (1 / Math.LN10);
+  h[58] = h6_4 * leb; h[59] = h6_5; h[60] = h6_6; h[63] = h7_0 * -gss; h[64] = h7_1 * -gss;
+  h[65] = h7_2 * -gss * (-1 / qms); h[66] = h7_3 * -gss * -1; h[67] = h7_4 * -gss * leb; h[68] = h7_5 * -gss; h[69] = h7_6 * -gss;
+  h[70] = h7_7 * -gss * -gss; h[72] = h8_0 * (1 / Math.LN10); h[73] = h8_1 * (1 / Math.LN10); h[74] = h8_2 * (1 / Math.LN10) * (-1 / qms); h[75] = h8_3 * (1 / Math.LN10) * -1;
+  h[76] = h8_4 * (1 / Math.LN10) * leb; h[77] = h8_5 * (1 / Math.LN10); h[78] = h8_6 * (1 / Math.LN10); h[79] = h8_7 * (1 / Math.LN10) * -gss; h[80] = h8_8 * (1 / Math.LN10) * (1 / Math.LN10);
 }
 
 export function semiInductanceRelaxing(v: ArrayLike<number>, data: KernelData, weights: Float64Array, loss: Loss, out: NormalSums): void {
@@ -260,17 +260,17 @@ export function semiInductanceRelaxing(v: ArrayLike<number>, data: KernelData, w
   }
   out.cost = 0.5 * cost;
   const g = out.gradient, h = out.hessian;
-  g[0] = g0; g[1] = g1; g[2] = g2 * (-1 / qms); g[3] = g3 * -1; g[7] = g7 * -1;
+  g[0] = g0; g[1] = g1; g[2] = g2 * (-1 / qms); g[3] = g3 * -1; g[7] = g7 * -gss;
   g[4] = g4 * leb; g[5] = g5; g[6] = g6; g[8] = g8; g[9] = g9;
   h[0] = h0_0; h[10] = h1_0; h[11] = h1_1; h[20] = h2_0 * (-1 / qms); h[21] = h2_1 * (-1 / qms);
   h[22] = h2_2 * (-1 / qms) * (-1 / qms); h[30] = h3_0 * -1; h[31] = h3_1 * -1; h[32] = h3_2 * -1 * (-1 / qms); h[33] = h3_3 * -1 * -1;
   h[40] = h4_0 * leb; h[41] = h4_1 * leb; h[42] = h4_2 * leb * (-1 / qms); h[43] = h4_3 * leb * -1; h[44] = h4_4 * leb * leb;
   h[50] = h5_0; h[51] = h5_1; h[52] = h5_2 * (-1 / qms); h[53] = h5_3 * -1; h[54] = h5_4 * leb;
   h[55] = h5_5; h[60] = h6_0; h[61] = h6_1; h[62] = h6_2 * (-1 / qms); h[63] = h6_3 * -1;
-  h[64] = h6_4 * leb; h[65] = h6_5; h[66] = h6_6; h[70] = h7_0 * -1; h[71] = h7_1 * -1;
-  h[72] = h7_2 * -1 * (-1 / qms); h[73] = h7_3 * -1 * -1; h[74] = h7_4 * -1 * leb; h[75] = h7_5 * -1; h[76] = h7_6 * -1;
-  h[77] = h7_7 * -1 * -1; h[80] = h8_0; h[81] = h8_1; h[82] = h8_2 * (-1 / qms); h[83] = h8_3 * -1;
-  h[84] = h8_4 * leb; h[85] = h8_5; h[86] = h8_6; h[87] = h8_7 * -1; h[88] = h8_8;
+  h[64] = h6_4 * leb; h[65] = h6_5; h[66] = h6_6; h[70] = h7_0 * -gss; h[71] = h7_1 * -gss;
+  h[72] = h7_2 * -gss * (-1 / qms); h[73] = h7_3 * -gss * -1; h[74] = h7_4 * -gss * leb; h[75] = h7_5 * -gss; h[76] = h7_6 * -gss;
+  h[77] = h7_7 * -gss * -gss; h[80] = h8_0; h[81] = h8_1; h[82] = h8_2 * (-1 / qms); h[83] = h8_3 * -1;
+  h[84] = h8_4 * leb; h[85] = h8_5; h[86] = h8_6; h[87] = h8_7 * -gss; h[88] = h8_8;
   h[90] = h9_0; h[91] = h9_1; h[92] = h9_2 * (-1 / qms); h[93] = h9_3 * -1; h[94] = h9_4 * leb;
-  h[95] = h9_5; h[96] = h9_6; h[97] = h9_7 * -1; h[98] = h9_8; h[99] = h9_9;
+  h[95] = h9_5; h[96] = h9_6; h[97] = h9_7 * -gss; h[98] = h9_8; h[99] = h9_9;
 }

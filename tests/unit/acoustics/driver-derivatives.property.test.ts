@@ -100,10 +100,10 @@ describe('the unrolled loops', () => {
           general.accumulate([...at, 0], loss, b!);
           expect(a!.cost / b!.cost).toBeCloseTo(1, 10);
           for (let k = 0; k < p; k++) {
-            const norm = Math.sqrt(b!.hessian[k * q + k]!);
+            const norm = Math.sqrt(b!.hessian[k * q + k]!) || 1;
             expect(Math.abs(a!.gradient[k]! - b!.gradient[k]!) / (norm * Math.sqrt(b!.cost))).toBeLessThan(1e-10);
             for (let l = 0; l <= k; l++) {
-              const size = norm * Math.sqrt(b!.hessian[l * q + l]!);
+              const size = norm * Math.sqrt(b!.hessian[l * q + l]!) || 1;
               expect(Math.abs(a!.hessian[k * p + l]! - b!.hessian[k * q + l]!) / size).toBeLessThan(1e-10);
             }
           }
