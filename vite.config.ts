@@ -2,7 +2,7 @@ import tailwindcss from '@tailwindcss/vite';
 import react from '@vitejs/plugin-react';
 import { defineConfig } from 'vite';
 
-const apiOrigin = process.env.HUMMOCK_API ?? 'http://127.0.0.1:4180';
+const apiOrigin = process.env.HUMMOCK_API ?? 'http://127.0.0.1:4680';
 
 export default defineConfig({
   plugins: [react(), tailwindcss()],

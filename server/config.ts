@@ -8,7 +8,7 @@ const port = z.coerce.number().int().min(0).max(65_535);
 
 const EnvironmentSchema = z.object({
   DATABASE_URL: z.string().regex(/^postgres(ql)?:\/\//, 'This has to be a postgres:// address.'),
-  HUMMOCK_PORT: port.default(4180),
+  HUMMOCK_PORT: port.default(4680),
   HUMMOCK_HOST: z.string().min(1).default('127.0.0.1'),
   HUMMOCK_DATA_DIR: z.string().min(1).default('.data'),
   HUMMOCK_CLIENT_DIR: z.string().min(1).default('dist/client'),

@@ -65,6 +65,7 @@ export const errors = {
   unknownDetail: 'Load the page again. If it comes back, send us the details with the reference.',
   workerTitle: 'The calculation ended early',
   workerDetail: 'The part of the browser that calculates stopped. Run it again.',
+  noCalculator: (id: string) => `There is no calculator named ${id}. Load the page again.`,
   storageDetail: 'The browser refused to store this. Free some space, or allow this site to keep data.',
   pageMissingTitle: 'There is no page here',
   pageMissingDetail: 'The address may be mistyped, or what it showed was deleted for good.',

@@ -2,6 +2,7 @@ import { expose } from 'comlink';
 import { calculatorById } from '../../calculators/index.js';
 import { runCalculator } from '../../calculators/kit/run.js';
 import { InputError } from '../../shared/errors.js';
+import { text } from '../../shared/text.js';
 import type { CalculateAnswer, CalculateRequest, OnProgress } from './messages.js';
 
 const PROGRESS_EVERY_MS = 50;
@@ -22,7 +23,7 @@ function calculate(request: CalculateRequest, onProgress: OnProgress): Calculate
   const { calculatorId, inputs, settings, settingsVersion, seed = 1 } = request;
   const definition = calculatorById(calculatorId);
   if (!definition) {
-    const message = `There is no calculator named ${calculatorId}. Load the page again.`;
+    const message = text.errors.noCalculator(calculatorId);
     return { ok: false, refusal: new InputError('bad-setting', message, 'calculatorId').toJSON() };
   }
   try {

@@ -57,7 +57,9 @@ export class WorkerPool<Api> {
         },
       };
       stop = () => {
-        this.queue.splice(this.queue.indexOf(waiting), 1);
+        stop = () => {}; // a second press finds nothing of this job any more
+        const index = this.queue.indexOf(waiting);
+        if (index >= 0) this.queue.splice(index, 1);
         reject(new JobStopped());
       };
       this.queue.push(waiting);

@@ -25,7 +25,7 @@ afterAll(async () => {
   rmSync(folder, { recursive: true, force: true });
 });
 
-const link = `http://127.0.0.1:4180/verify/${'a-long-code-'.repeat(8)}`;
+const link = `http://127.0.0.1:4680/verify/${'a-long-code-'.repeat(8)}`;
 const letter = {
   to: 'ada@example.test',
   subject: text.mail.verify.subject,

@@ -12,7 +12,7 @@ it('needs only the database, and listens on loopback unless told otherwise', () 
   const config = readConfig(least);
   expect(config).toMatchObject({
     host: '127.0.0.1',
-    port: 4180,
+    port: 4680,
     publicUrl: undefined,
     smtpUrl: undefined,
     trustProxy: false,
@@ -30,7 +30,7 @@ it('makes a secret once, for this user alone, and finds it again', () => {
 });
 
 it('takes an empty variable for one that is not set', () => {
-  expect(readConfig({ ...least, SMTP_URL: '', HUMMOCK_PORT: '' })).toMatchObject({ smtpUrl: undefined, port: 4180 });
+  expect(readConfig({ ...least, SMTP_URL: '', HUMMOCK_PORT: '' })).toMatchObject({ smtpUrl: undefined, port: 4680 });
 });
 
 it('keeps of the public address what pages are compared with: the origin', () => {

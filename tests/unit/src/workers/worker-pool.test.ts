@@ -76,6 +76,19 @@ it('takes waiting work out of the queue without touching the worker that works',
   await expect(running.done).rejects.toBeInstanceOf(JobStopped);
 });
 
+it('leaves the other waiting work in the queue when a waiting job is stopped twice', async () => {
+  const pool = poolOf(1);
+  const running = pool.run((api) => api.forever());
+  const stopped = pool.run((api) => api.double(1));
+  const kept = pool.run((api) => api.double(2));
+  stopped.stop();
+  stopped.stop();
+  await expect(stopped.done).rejects.toBeInstanceOf(JobStopped);
+  running.stop();
+  await expect(running.done).rejects.toBeInstanceOf(JobStopped);
+  expect(await kept.done).toBe(4);
+});
+
 it('never has more workers at work than it may', async () => {
   const pool = poolOf(2);
   const jobs = Array.from({ length: 6 }, (_, i) => pool.run((api) => api.double(i)));
