@@ -52,7 +52,7 @@ export function driverImpedance(
   const coilCount = coilParameters(model.coil).length;
   coilImpedance(model.coil, values, 4, grid, z, derivatives?.slice(4, 4 + coilCount));
   addMotionalPart(model, values, grid, z, derivatives, 4 + coilCount);
-  if (derivatives) for (const column of derivatives) divideBy(column, z);
+  if (derivatives) divideBy(derivatives, z);
   return z;
 }
 
@@ -219,11 +219,20 @@ function putProduct(column: ComplexArray, i: number, aRe: number, aIm: number, b
   column.im[i] = aRe * bIm + aIm * bRe;
 }
 
-function divideBy(column: ComplexArray, z: ComplexArray): void {
-  for (let i = 0; i < column.re.length; i++) {
-    const [re, im, zRe, zIm] = [column.re[i]!, column.im[i]!, z.re[i]!, z.im[i]!];
-    const size = 1 / (zRe * zRe + zIm * zIm);
-    column.re[i] = (re * zRe + im * zIm) * size;
-    column.im[i] = (im * zRe - re * zIm) * size;
+/** Every column divided by z, in place. */
+function divideBy(columns: readonly ComplexArray[], z: ComplexArray): void {
+  const n = z.re.length;
+  const inverse = complexArray(n);
+  for (let i = 0; i < n; i++) {
+    const size = 1 / (z.re[i]! * z.re[i]! + z.im[i]! * z.im[i]!);
+    put(inverse, i, z.re[i]! * size, -z.im[i]! * size);
+  }
+  for (const { re, im } of columns) {
+    for (let i = 0; i < n; i++) {
+      const a = re[i]!;
+      const b = im[i]!;
+      re[i] = a * inverse.re[i]! - b * inverse.im[i]!;
+      im[i] = a * inverse.im[i]! + b * inverse.re[i]!;
+    }
   }
 }

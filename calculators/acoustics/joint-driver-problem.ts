@@ -19,7 +19,7 @@ export interface JointSweep {
   readonly addedMass?: { readonly massKg: number; readonly uncertaintyKg: number };
   /** In a closed box: its terms; `massFree` lets the moving mass differ from that in free air (mu of its own). */
   readonly box?: { readonly kind: Exclude<DriverLoad['box'], 'none'>; readonly massFree: boolean };
-  /** True: a DC resistance of its own (a warm coil, a contact), while Bl stays shared. */
+  /** True: a DC resistance of its own (a warm coil, a contact), while Bl stays shared. Not for all sweeps: one has the `Re`. */
   readonly ownRe?: boolean;
 }
 
@@ -60,6 +60,8 @@ export function jointDriverProblem(
   priors: readonly PriorKnowledge[] = [],
 ): JointDriverProblem {
   if (sweeps.length === 0) throw new InputError('missing-input', 'A joint fit needs at least one sweep.', 'sweeps');
+  if (sweeps.every(({ ownRe }) => ownRe))
+    throw new InputError('bad-setting', 'One sweep of a joint fit must have the shared Re.', 'ownRe');
   const terms = sweeps.map(
     (sweep) =>
       new SweepTerm(
@@ -166,16 +168,16 @@ class Assembly {
 
   localValues(s: number, values: ArrayLike<number>): Float64Array {
     const local = this.local[s]!;
-    const { addedMass, ownRe } = this.sweeps[s]!;
+    const { addedMass } = this.sweeps[s]!;
+    const fixed = this.fixedMassKg[s];
     this.links[s]!.forEach((links, k) => {
-      local[k] = values[links[0]!.joint]!;
+      const [first, second, third] = links;
+      const value = values[first!.joint]!;
+      if (first!.massRatio && addedMass) local[k] = (fixed ?? values[second!.joint]!) / value;
+      else if (third)
+        local[k] = (value * values[second!.joint]!) / values[third.joint]!; // Qes with an Re of its own
+      else local[k] = value;
     });
-    if (ownRe) local[3]! *= values[this.indexOf(`Re${s + 1}`)]! / values[this.indexOf('Re')]!;
-    if (addedMass) {
-      const at = this.terms[s]!.parameters.findIndex(({ id }) => id === 'mu');
-      const massKg = this.fixedMassKg[s] ?? values[this.indexOf(`mass${s + 1}`)]!;
-      local[at] = massKg / values[this.indexOf('Mms')]!;
-    }
     return local;
   }
 

@@ -77,9 +77,11 @@ export class SweepTerm {
     const { weights, groupSize } = this;
     const pair = new Float64Array(2);
     for (let i = 0; i < weights.length; i++) {
-      this.residualAt(i, z, pair);
-      out[at + groupSize * i] = weights[i]! * pair[0]!;
-      if (groupSize === 2) out[at + 2 * i + 1] = weights[i]! * pair[1]!;
+      const weight = weights[i]!;
+      if (weight > 0) this.residualAt(i, z, pair);
+      else pair.fill(0); // whatever stands there, a gross point or 0 Ω
+      out[at + groupSize * i] = weight * pair[0]!;
+      if (groupSize === 2) out[at + 2 * i + 1] = weight * pair[1]!;
     }
   }
 
@@ -102,29 +104,43 @@ export class SweepTerm {
       this.kernel(values, this.data, this.weights, loss, out);
       return;
     }
-    const { z: model, columns } = this.evaluate(values, true);
-    const { weights, groupSize } = this;
+    const { z, columns } = this.evaluate(values, true);
+    const rows = this.rootWeighted(z, columns, loss, out);
     const p = columns.length;
-    out.gradient.fill(0);
-    out.hessian.fill(0);
-    out.cost = 0;
+    const dot = this.groupSize === 2 ? complexDot : realDot;
+    for (let k = 0; k < p; k++) {
+      out.gradient[k] = -dot(columns[k]!, rows);
+      for (let l = 0; l <= k; l++) out.hessian[k * p + l] = dot(columns[k]!, columns[l]!);
+    }
+  }
+
+  /** Misfit times √weight, the loss's weight included, and the columns likewise; sets the cost. */
+  private rootWeighted(z: ComplexArray, columns: readonly ComplexArray[], loss: Loss, out: NormalSums): ComplexArray {
+    const { weights } = this;
+    const rows = complexArray(weights.length);
+    const roots = new Float64Array(weights.length);
     const squareScale = loss.scale * loss.scale;
     const pair = new Float64Array(2);
+    let cost = 0;
     for (let i = 0; i < weights.length; i++) {
       const weight = weights[i]!;
       if (weight === 0) continue;
-      this.residualAt(i, model, pair);
-      const s = weight * weight;
-      const z = (s * (pair[0]! * pair[0]! + pair[1]! * pair[1]!)) / squareScale;
-      out.cost += 0.5 * squareScale * lossValue(loss.kind, z);
-      const w = s * lossWeight(loss.kind, z);
-      for (let k = 0; k < p; k++) {
-        const aRe = w * columns[k]!.re[i]!;
-        const aIm = groupSize === 2 ? w * columns[k]!.im[i]! : 0;
-        out.gradient[k]! -= aRe * pair[0]! + aIm * pair[1]!;
-        for (let l = 0; l <= k; l++) out.hessian[k * p + l]! += aRe * columns[l]!.re[i]! + aIm * columns[l]!.im[i]!;
+      this.residualAt(i, z, pair);
+      const square = weight * weight * (pair[0]! * pair[0]! + pair[1]! * pair[1]!);
+      cost += 0.5 * squareScale * lossValue(loss.kind, square / squareScale);
+      const root = weight * Math.sqrt(lossWeight(loss.kind, square / squareScale));
+      roots[i] = root;
+      rows.re[i] = root * pair[0]!;
+      rows.im[i] = root * pair[1]!;
+    }
+    out.cost = cost;
+    for (const { re, im } of columns) {
+      for (let i = 0; i < roots.length; i++) {
+        re[i]! *= roots[i]!;
+        im[i]! *= roots[i]!;
       }
     }
+    return rows;
   }
 
   /** [ln|Z/Zmodel|, arg(Z/Zmodel)]; the second is 0 where there is no phase. */
@@ -135,6 +151,21 @@ export class SweepTerm {
     const turn = data.phaseRad[i]! - Math.atan2(z.im[i]!, z.re[i]!);
     pair[1] = turn - 2 * Math.PI * Math.round(turn / (2 * Math.PI));
   }
+}
+
+/** Re Σ conj(a)·b. */
+function complexDot(a: ComplexArray, b: ComplexArray): number {
+  const { re, im } = a;
+  const { re: bRe, im: bIm } = b;
+  let sum = 0;
+  for (let i = 0; i < re.length; i++) sum += re[i]! * bRe[i]! + im[i]! * bIm[i]!;
+  return sum;
+}
+
+function realDot({ re }: ComplexArray, { re: bRe }: ComplexArray): number {
+  let sum = 0;
+  for (let i = 0; i < re.length; i++) sum += re[i]! * bRe[i]!;
+  return sum;
 }
 
 /** ρ of every point, unweighted: the misfit to plot, shape (n). */
