@@ -69,9 +69,11 @@ export async function inTurn(root, say, work) {
  */
 export async function installPackages(root, say) {
   const stampPath = join(root, 'node_modules', '.hummock-stamp');
-  const stamp = hashOf([readFileSync(join(root, 'package-lock.json')), process.versions.modules, process.arch]);
-  if (existsSync(stampPath) && readFileSync(stampPath, 'utf8') === stamp) return;
-  if (!existsSync(stampPath) && holdsTheLock(root)) return writeFileSync(stampPath, stamp);
+  const nodeKind = `${process.versions.modules} ${process.arch}`;
+  const stamp = `${nodeKind} ${hashOf(readFileSync(join(root, 'package-lock.json')))}`;
+  const earlier = existsSync(stampPath) ? readFileSync(stampPath, 'utf8') : nodeKind;
+  if (earlier === stamp) return;
+  if (earlier.startsWith(nodeKind) && holdsTheLock(root)) return writeFileSync(stampPath, stamp); // npm itself was here
   say('Installing the packages of package-lock.json. This takes about a minute.');
   rmSync(stampPath, { force: true });
   await run(root, 'npm', ['ci', '--include=dev', '--no-audit', '--no-fund', '--loglevel=error'], 'npm ci');
@@ -248,9 +250,7 @@ function run(root, program, args, what) {
   });
 }
 
-/** @param {(string | Buffer)[]} parts */
-function hashOf(parts) {
-  const hash = createHash('sha256');
-  for (const part of parts) hash.update(part).update('\0');
-  return hash.digest('hex');
+/** @param {Buffer} content */
+function hashOf(content) {
+  return createHash('sha256').update(content).digest('hex');
 }

@@ -1,11 +1,10 @@
 /** The stages of `npm test`: what each runs, and how many of its checks passed and failed. */
 import { spawn } from 'node:child_process';
-import { existsSync, mkdirSync, mkdtempSync, readFileSync, rmSync } from 'node:fs';
-import { tmpdir } from 'node:os';
+import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync, statSync } from 'node:fs';
 import { join } from 'node:path';
 import { commandPath, installDebianPackages } from './debian.mjs';
 import { startThrowAwayCluster } from './postgres.mjs';
-import { SetupError } from './processes.mjs';
+import { beganAt, SetupError } from './processes.mjs';
 import { startServer } from './server-process.mjs';
 import { buildForTests, inTurn, plainEnvironment } from './setup.mjs';
 
@@ -74,7 +73,8 @@ async function browserTests(context) {
   const { root, reports, passedOn, say } = context;
   const chromium = chromiumPath(say);
   const build = await inTurn(root, say, () => buildForTests(root, say));
-  const dataDir = mkdtempSync(join(tmpdir(), 'hummock-browser-tests-'));
+  const dataDir = join(reports, 'data');
+  mkdirSync(dataDir, { mode: 0o700 });
   const cluster = await startThrowAwayCluster({ say });
   const server = await startServer({
     root,
@@ -91,7 +91,6 @@ async function browserTests(context) {
     context.open.delete(close);
     await server.stop();
     await cluster.stop();
-    rmSync(dataDir, { recursive: true, force: true });
   };
   context.open.add(close);
   try {
@@ -151,6 +150,7 @@ function playwrightCounts(path) {
 }
 
 const LONGEST_STAGE_MS = 20 * 60_000;
+const KEPT_REPORTS = 3;
 
 /**
  * Runs Node on the arguments, shows what it prints, and answers its exit status.
@@ -182,14 +182,24 @@ function run({ root, open, say }, args, more = {}) {
 
 /** What the person's shell says about databases, ports and modes must not reach a test. */
 function testEnvironment() {
-  const own = Object.entries(plainEnvironment()).filter(([name]) => !/^(HUMMOCK_|PG|DATABASE_URL$)/.test(name));
-  return { ...Object.fromEntries(own), NO_COLOR: '1', FORCE_COLOR: '0' };
+  const own = Object.entries(plainEnvironment()).filter(
+    ([name]) => !/^(HUMMOCK_|PG|(DATABASE_URL|FORCE_COLOR)$)/.test(name),
+  );
+  return { ...Object.fromEntries(own), NO_COLOR: '1' };
 }
 
-/** @param {string} root */
+/**
+ * A folder for the reports, pictures and letters of this run; those of the last few runs are kept.
+ * @param {string} root
+ */
 export function reportsFolder(root) {
-  const folder = join(root, '.cache', 'reports', String(process.pid));
+  const all = join(root, '.cache', 'reports');
+  mkdirSync(all, { recursive: true });
+  const byAge = readdirSync(all).sort((a, b) => statSync(join(all, b)).mtimeMs - statSync(join(all, a)).mtimeMs);
+  const ended = byAge.filter((pid) => beganAt(Number(pid)) === undefined || pid === String(process.pid));
+  for (const pid of ended.slice(KEPT_REPORTS)) rmSync(join(all, pid), { recursive: true, force: true });
+  const folder = join(all, String(process.pid));
   rmSync(folder, { recursive: true, force: true });
-  mkdirSync(folder, { recursive: true });
+  mkdirSync(folder);
   return folder;
 }
