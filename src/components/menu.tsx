@@ -18,13 +18,19 @@ interface MenuProps {
   entries: readonly MenuEntry[];
   look?: ButtonLook;
   isIconOnly?: boolean;
+  /** Not a stop of Tab: in a list with one stop a row. */
+  isSkippedByTab?: boolean;
 }
 
 /** A button that opens a list of actions. Load it lazily where the first route could reach it. */
-export function Menu({ label, children, entries, look = 'quiet', isIconOnly }: MenuProps) {
+export function Menu({ label, children, entries, look = 'quiet', isIconOnly, isSkippedByTab }: MenuProps) {
   return (
     <MenuTrigger>
-      <AriaButton aria-label={label} className={buttonClass(look, isIconOnly)}>
+      <AriaButton
+        aria-label={label}
+        excludeFromTabOrder={isSkippedByTab ?? false}
+        className={buttonClass(look, isIconOnly)}
+      >
         {children}
       </AriaButton>
       <Popover className="min-w-48 animate-rise rounded-control border border-line bg-raised p-1 shadow-lift">

@@ -24,7 +24,7 @@ const words = text.sheet.results;
 export function CalculatorCard({ card, definition }: { card: Card; definition: CalculatorDefinition }) {
   const { state, setCursorA, readOnlyReason } = useSheetScene();
   const cardState = useCard(card, definition);
-  const { output, reasons, run } = cardState;
+  const { output, run } = cardState;
   return (
     <article
       aria-label={definition.title}
@@ -63,7 +63,7 @@ export function CalculatorCard({ card, definition }: { card: Card; definition: C
         <FiguresTable
           figures={output.figures}
           declared={definition.figures}
-          isOutOfDate={reasons.length > 0 || run.kind === 'running'}
+          isOutOfDate={!cardState.isCurrent}
           caption={`${definition.title}: ${words.figures}`}
         />
       )}
@@ -100,7 +100,7 @@ export function CalculatorCard({ card, definition }: { card: Card; definition: C
 /** Kept, not kept, out of date with what changed, waiting for inputs: always in words. */
 function CardStatus({ cardState }: { cardState: CardState }) {
   const { readOnlyReason } = useSheetScene();
-  const { kept, reasons, run, isComplete, canKeep, isKeeping, keep } = cardState;
+  const { kept, reasons, run, isComplete, isAnyMissing, canKeep, isKeeping, keep } = cardState;
   if (kept && reasons.length > 0) {
     const what = reasons.map((reason) => words.reasons[reason]).join(', ');
     return <StatusWord tone="old">{words.outOfDateBecause(what)}</StatusWord>;
@@ -113,6 +113,7 @@ function CardStatus({ cardState }: { cardState: CardState }) {
       </span>
     );
   }
+  if (isAnyMissing) return <StatusWord tone="old">{words.sweepMissing}</StatusWord>;
   if (!isComplete) return <StatusWord tone="plain">{words.noInputs}</StatusWord>;
   return (
     <span className="flex flex-wrap items-center gap-2">

@@ -1,11 +1,11 @@
 import { X } from 'lucide-react';
-import { keysOf } from '../../../calculators/kit/assign-roles.js';
-import type { CalculatorDefinition, RoleDeclaration } from '../../../calculators/kit/calculator.js';
+import type { CalculatorDefinition } from '../../../calculators/kit/calculator.js';
 import type { Card } from '../../../shared/contracts/sheet.js';
 import { text } from '../../../shared/text.js';
 import { Button } from '../../components/button.js';
 import { Select } from '../../components/select.js';
 import { BoundedNumberField } from './bounded-number-field.js';
+import { toldKeys } from './card-inputs.js';
 import { useSheetScene } from './sheet-context.js';
 
 const words = text.sheet.results;
@@ -21,10 +21,11 @@ interface CardInputsFormProps {
 export function CardInputsForm({ card, definition, onInputs }: CardInputsFormProps) {
   return (
     <div className="flex flex-col gap-4">
-      {Object.entries(definition.roles).map(([role, declaration]) => (
+      {Object.keys(definition.roles).map((role) => (
         <RoleInputs
           key={role}
-          declaration={declaration}
+          role={role}
+          definition={definition}
           inputs={card.inputs[role] ?? []}
           onInputs={(inputs) => onInputs({ ...card.inputs, [role]: inputs })}
         />
@@ -34,21 +35,21 @@ export function CardInputsForm({ card, definition, onInputs }: CardInputsFormPro
 }
 
 interface RoleInputsProps {
-  declaration: RoleDeclaration;
+  role: string;
+  definition: CalculatorDefinition;
   inputs: readonly Input[];
   onInputs: (inputs: Input[]) => void;
 }
 
-function RoleInputs({ declaration, inputs, onInputs }: RoleInputsProps) {
+function RoleInputs({ role, definition, inputs, onInputs }: RoleInputsProps) {
   const { sweeps } = useSheetScene();
+  const declaration = definition.roles[role];
+  if (!declaration) return null;
   const { label, help, least, most } = declaration;
   const used = new Set(inputs.map(({ sweepId }) => sweepId));
   const free = sweeps.filter(({ id }) => !used.has(id));
   const add = (sweepId: string) => {
-    const sweep = sweeps.find(({ id }) => id === sweepId);
-    if (!sweep) return;
-    const told = Object.entries(keysOf(sweep.conditions)).filter(([key]) => Object.hasOwn(declaration.keys, key));
-    const input = { sweepId, keys: Object.fromEntries(told) };
+    const input: Input = { sweepId, keys: {} }; // what was told with the sweep counts until the card says otherwise
     onInputs(most === 1 ? [input] : [...inputs, input]);
   };
   const canAdd = free.length > 0 && (inputs.length < most || most === 1);
@@ -61,7 +62,8 @@ function RoleInputs({ declaration, inputs, onInputs }: RoleInputsProps) {
         <InputRow
           key={input.sweepId}
           input={input}
-          declaration={declaration}
+          role={role}
+          definition={definition}
           onInput={(next) => onInputs(inputs.flatMap((each) => (each === input ? (next ?? []) : each)))}
         />
       ))}
@@ -83,13 +85,17 @@ function RoleInputs({ declaration, inputs, onInputs }: RoleInputsProps) {
 
 interface InputRowProps {
   input: Input;
-  declaration: RoleDeclaration;
+  role: string;
+  definition: CalculatorDefinition;
   onInput: (input: Input | undefined) => void;
 }
 
-function InputRow({ input, declaration, onInput }: InputRowProps) {
+function InputRow({ input, role, definition, onInput }: InputRowProps) {
   const { sweeps } = useSheetScene();
-  const name = sweeps.find(({ id }) => id === input.sweepId)?.name ?? text.sheet.results.reasons['sweep-deleted'];
+  const sweep = sweeps.find(({ id }) => id === input.sweepId);
+  const name = sweep?.name ?? words.reasons['sweep-deleted'];
+  const told = sweep ? toldKeys(definition, role, sweep) : {};
+  const keys = definition.roles[role]?.keys ?? {};
   const tell = (key: string, value: number | undefined) => {
     const { [key]: _before, ...others } = input.keys;
     onInput({ ...input, keys: value === undefined ? others : { ...others, [key]: value } });
@@ -106,8 +112,8 @@ function InputRow({ input, declaration, onInput }: InputRowProps) {
           onClick={() => onInput(undefined)}
         />
       </div>
-      {Object.entries(declaration.keys).map(([key, { label, unit, required }]) => {
-        const value = input.keys[key];
+      {Object.entries(keys).map(([key, { label, unit, required }]) => {
+        const value = input.keys[key] ?? told[key];
         return (
           <BoundedNumberField
             key={key}

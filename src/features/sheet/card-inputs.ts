@@ -1,3 +1,4 @@
+import { keysOf } from '../../../calculators/kit/assign-roles.js';
 import type { CalculatorDefinition, RoleInputs } from '../../../calculators/kit/calculator.js';
 import type { CreateResult, OutOfDateReason, Result } from '../../../shared/contracts/result.js';
 import type { Card } from '../../../shared/contracts/sheet.js';
@@ -8,21 +9,28 @@ import { type ResultInputs, resultIdentity } from '../../../shared/result-identi
 
 export const SEED = 1;
 
-/** One sweep in one role, with its row; a sweep that is in the bin or not yet fetched is left out. */
+/** One sweep in one role, with its row and everything that was told: with the sweep, or on the card instead. */
 export interface CardInput {
   readonly role: string;
   readonly sweep: SweepRow;
   readonly keys: Readonly<Record<string, number | string>>;
 }
 
-export function cardInputs(card: Card, sweeps: readonly SweepRow[]): CardInput[] {
+/** The inputs of a card, and whether a sweep among them is missing: in the bin, or not yet fetched. */
+export function cardInputs(card: Card, definition: CalculatorDefinition, sweeps: readonly SweepRow[]) {
   const byId = new Map(sweeps.map((sweep) => [sweep.id, sweep]));
-  return Object.entries(card.inputs).flatMap(([role, inputs]) =>
-    inputs.flatMap(({ sweepId, keys }) => {
-      const sweep = byId.get(sweepId);
-      return sweep ? [{ role, sweep, keys }] : [];
-    }),
-  );
+  const asked = Object.entries(card.inputs).flatMap(([role, list]) => list.map((input) => ({ role, ...input })));
+  const inputs = asked.flatMap(({ role, sweepId, keys }): CardInput[] => {
+    const sweep = byId.get(sweepId);
+    return sweep ? [{ role, sweep, keys: { ...toldKeys(definition, role, sweep), ...keys } }] : [];
+  });
+  return { inputs, isAnyMissing: inputs.length < asked.length };
+}
+
+/** What was told with a sweep, as far as this role asks for it. */
+export function toldKeys(definition: CalculatorDefinition, role: string, sweep: SweepRow): Record<string, number> {
+  const wanted = definition.roles[role]?.keys ?? {};
+  return Object.fromEntries(Object.entries(keysOf(sweep.conditions)).filter(([key]) => Object.hasOwn(wanted, key)));
 }
 
 /** Everything that decides the digits of a card's run: the same as of the result that would be kept. */

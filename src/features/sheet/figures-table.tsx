@@ -23,6 +23,7 @@ interface FiguresTableProps {
 export function FiguresTable({ figures, declared, isOutOfDate, caption }: FiguresTableProps) {
   const [showsAll, setShowsAll] = useState(false);
   const [showsStandard, setShowsStandard] = useState(false);
+  const [showsDefinitions, setShowsDefinitions] = useState(false);
   const byId = new Map(figures.map((figure) => [figure.id, figure]));
   const known = declared.flatMap((declaration) => {
     const figure = byId.get(declaration.id);
@@ -49,7 +50,7 @@ export function FiguresTable({ figures, declared, isOutOfDate, caption }: Figure
         </thead>
         <tbody>
           {shown.map(({ declaration, figure }) => (
-            <FigureRow key={figure.id} {...{ declaration, figure, isOutOfDate, showsStandard }} />
+            <FigureRow key={figure.id} {...{ declaration, figure, isOutOfDate, showsStandard, showsDefinitions }} />
           ))}
         </tbody>
       </table>
@@ -64,6 +65,11 @@ export function FiguresTable({ figures, declared, isOutOfDate, caption }: Figure
           checked={showsStandard}
           onChange={(event) => setShowsStandard(event.target.checked)}
         />
+        <Checkbox
+          label={words.showDefinitions}
+          checked={showsDefinitions}
+          onChange={(event) => setShowsDefinitions(event.target.checked)}
+        />
       </div>
     </div>
   );
@@ -74,9 +80,10 @@ interface FigureRowProps {
   figure: Figure;
   isOutOfDate: boolean;
   showsStandard: boolean;
+  showsDefinitions: boolean;
 }
 
-function FigureRow({ declaration, figure, isOutOfDate, showsStandard }: FigureRowProps) {
+function FigureRow({ declaration, figure, isOutOfDate, showsStandard, showsDefinitions }: FigureRowProps) {
   const { symbolsFirst, locale, units } = usePreferences();
   const { value, spread } = figureText(figure, showsStandard, { locale: locale ?? undefined, system: units });
   const [first, second] = symbolsFirst
@@ -84,7 +91,7 @@ function FigureRow({ declaration, figure, isOutOfDate, showsStandard }: FigureRo
     : [declaration.name, declaration.symbol];
   return (
     <>
-      <tr className="border-t border-line align-baseline" title={declaration.definition}>
+      <tr className="border-t border-line align-baseline">
         <th scope="row" className="py-1 pe-2 text-start font-normal">
           <span>{first}</span> <span className="font-num text-note whitespace-nowrap text-soft">{second}</span>
         </th>
@@ -98,6 +105,13 @@ function FigureRow({ declaration, figure, isOutOfDate, showsStandard }: FigureRo
         </td>
         <td className="py-1 ps-3 text-end font-num text-note whitespace-nowrap text-soft">{spread}</td>
       </tr>
+      {showsDefinitions && (
+        <tr>
+          <td colSpan={3} className="pb-1 text-note text-soft">
+            {declaration.definition} {words.source(declaration.source)}
+          </td>
+        </tr>
+      )}
       {figure.note && (
         <tr>
           <td colSpan={3} className="pb-1 text-note text-soft">
@@ -122,6 +136,9 @@ export function figureText(
   if (isExact && !interval) return { value: formatQuantity(value, unit, { ...format, digits: 7 }), spread: words.tiny };
   const written = formatUncertain({ value, uncertainty, dof }, unit, format);
   if (showsStandard) return { value: written.value, spread: written.standard };
-  if (interval) return { value: written.value, spread: formatInterval(interval.low, interval.high, unit, format) };
+  if (interval) {
+    const ends = formatInterval(interval.low, interval.high, unit, format);
+    return { value: written.value, spread: `${ends} (${words.intervalKind[interval.kind]})` };
+  }
   return { value: written.value, spread: written.plusMinus };
 }

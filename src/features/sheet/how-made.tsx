@@ -3,13 +3,15 @@ import type { CalculatorDefinition } from '../../../calculators/kit/calculator.j
 import { resultIdentity } from '../../../shared/result-identity.js';
 import { text } from '../../../shared/text.js';
 import { exactDate } from '../../lib/dates.js';
+import { useSheetScene } from './sheet-context.js';
 import type { CardState } from './use-card.js';
 
 const words = text.sheet.results.made;
 
 /** Everything that decided the digits, so that anyone can run it again and must get the same. */
 export function HowMade({ definition, cardState }: { definition: CalculatorDefinition; cardState: CardState }) {
-  const { kept, parts, inputs } = cardState;
+  const { sweeps } = useSheetScene();
+  const { kept, parts } = cardState;
   const shown = kept ?? parts;
   const digest = useDigest(resultIdentity(shown), kept?.inputsSha256);
   const row = (label: string, value: string) => (
@@ -22,16 +24,19 @@ export function HowMade({ definition, cardState }: { definition: CalculatorDefin
     <dl className="grid grid-cols-[auto_1fr] gap-x-3 gap-y-1 text-note">
       {row(words.calculator, `${definition.id}, ${words.revision(shown.calculatorVersion)}`)}
       {row(words.settings, JSON.stringify(shown.settings))}
-      {inputs.map(({ role, sweep, keys }) => (
-        <div key={`${role} ${sweep.id}`} className="col-span-2 grid grid-cols-subgrid">
-          {row(
-            definition.roles[role]?.label ?? role,
-            [sweep.name, ...Object.entries(keys).map(([key, value]) => `${key} ${value}`)].join(', '),
-          )}
-          {row(words.source, `${sweep.source.fileName}, ${words.revision(sweep.revision.number)}`)}
-          {row(words.fingerprint, sweep.revision.pointsSha256)}
-        </div>
-      ))}
+      {shown.inputs.map(({ role, sweepId, revisionId, pointsSha256, keys }) => {
+        const sweep = sweeps.find(({ id }) => id === sweepId);
+        const isNewest = sweep?.revision.id === revisionId;
+        const reading = isNewest ? words.revision(sweep.revision.number) : words.earlierReading;
+        const told = Object.entries(keys).map(([key, value]) => `${key} ${value}`);
+        return (
+          <div key={`${role} ${sweepId}`} className="col-span-2 grid grid-cols-subgrid">
+            {row(definition.roles[role]?.label ?? role, [sweep?.name ?? sweepId, ...told].join(', '))}
+            {row(words.source, `${sweep?.source.fileName ?? sweepId}, ${reading}`)}
+            {row(words.fingerprint, pointsSha256)}
+          </div>
+        );
+      })}
       {row(words.digest, digest)}
       {kept && row(words.by, kept.createdBy.name)}
       {kept && row(words.when, exactDate(kept.createdAt))}

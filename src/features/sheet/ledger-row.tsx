@@ -79,6 +79,7 @@ export function LedgerRow({ sweep, isTabStop, isRenaming, onRename, onRenamed, o
         <Menu
           label={words.details(sweep.name)}
           isIconOnly
+          isSkippedByTab={!isTabStop}
           entries={[
             { id: 'details', label: words.detailsShort, onAction: () => setIsOpen(!isOpen) },
             { id: 'only', label: words.drawOnly, onAction: onDrawOnly },

@@ -33,7 +33,7 @@ function SplitLayout({ panes, size }: { panes: PaneContent; size: Exclude<Screen
   const group = useRef<GroupImperativeHandle>(null);
   const footnotes = useRef<PanelImperativeHandle>(null);
   const [isFootOpen, setIsFootOpen] = useState(false);
-  const shown: readonly PaneId[] = size === 'wide' ? ['ledger', 'chart', 'results'] : ['chart', side];
+  const shown: readonly PaneId[] = size === 'wide' ? ['ledger', 'chart', 'results'] : ['chart', 'results'];
   const remember = (layout: Layout) =>
     setPreferences({ paneSizes: { ...getPreferences().paneSizes, ...keyed(layout, size) } });
   const resize = (pane: PaneId, by: number) => {
@@ -71,10 +71,8 @@ function SplitLayout({ panes, size }: { panes: PaneContent; size: Exclude<Screen
               ? [<Divider key={`divider-${pane}`} label={words.resize(words.panes[shown[i - 1] ?? pane])} />]
               : []),
             <Panel key={pane} id={pane} minSize={pane === 'chart' ? '30%' : '14%'}>
-              {size === 'medium' && pane === side ? (
-                <SideSwitch side={side} onSide={setSide}>
-                  {panes[pane](sizeMenu(pane))}
-                </SideSwitch>
+              {size === 'medium' && pane === 'results' ? (
+                <SideSwitch side={side} onSide={setSide} panes={panes} sizeMenu={sizeMenu} />
               ) : (
                 panes[pane](sizeMenu(pane))
               )}
@@ -107,15 +105,15 @@ function SplitLayout({ panes, size }: { panes: PaneContent; size: Exclude<Screen
   );
 }
 
-function SideSwitch({
-  side,
-  onSide,
-  children,
-}: {
+interface SideSwitchProps {
   side: 'ledger' | 'results';
   onSide: (side: 'ledger' | 'results') => void;
-  children: ReactNode;
-}) {
+  panes: PaneContent;
+  sizeMenu: (pane: PaneId) => ReactNode;
+}
+
+/** Ledger or Results beside the chart. The hidden one stays alive: its calculations go on. */
+function SideSwitch({ side, onSide, panes, sizeMenu }: SideSwitchProps) {
   return (
     <div className="flex h-full min-h-0 flex-col">
       <div className="flex shrink-0 gap-1 border-b border-line bg-ground p-1">
@@ -130,7 +128,11 @@ function SideSwitch({
           </Button>
         ))}
       </div>
-      <div className="min-h-0 flex-1">{children}</div>
+      {(['ledger', 'results'] as const).map((pane) => (
+        <div key={pane} hidden={pane !== side} className="min-h-0 flex-1">
+          {panes[pane](sizeMenu('results'))}
+        </div>
+      ))}
     </div>
   );
 }
@@ -139,7 +141,11 @@ function SmallLayout({ panes }: { panes: PaneContent }) {
   const [open, setOpen] = useState<PaneId>('chart');
   return (
     <>
-      <div className="min-h-0 flex-1">{panes[open](null)}</div>
+      {(Object.keys(words.panes) as PaneId[]).map((pane) => (
+        <div key={pane} hidden={pane !== open} className="min-h-0 flex-1">
+          {panes[pane](null)}
+        </div>
+      ))}
       <nav aria-label={words.panesLabel} className="flex shrink-0 border-t border-line bg-ground">
         {(Object.keys(words.panes) as PaneId[]).map((pane) => (
           <button

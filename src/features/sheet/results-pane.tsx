@@ -73,10 +73,7 @@ function fitOf(definition: CalculatorDefinition, drawn: readonly SweepRow[]) {
   const candidates = drawn.map(({ id, itemId, conditions }) => ({ sweepId: id, itemId, conditions }));
   const { roles, missing } = assignRoles(definition, candidates);
   const inputs = Object.fromEntries(
-    Object.entries(roles).map(([role, list]) => [
-      role,
-      list.map(({ sweepId, keys }) => ({ sweepId, keys: { ...keys } })),
-    ]),
+    Object.entries(roles).map(([role, list]) => [role, list.map(({ sweepId }) => ({ sweepId, keys: {} }))]),
   );
   const what = missing.map(({ label }) => label).join(', ');
   return { inputs, missing: what ? words.missing(what) : undefined };

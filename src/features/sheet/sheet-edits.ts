@@ -114,6 +114,17 @@ export function mergeContents(
   return { content, clashes };
 }
 
+/** A history with somebody else's edits in every step of it, so that undo takes back one's own and no more. */
+export function rebased(history: EditHistory, base: SheetContent, theirs: SheetContent): EditHistory {
+  const onto = (content: SheetContent) => mergeContents(base, content, theirs).content;
+  return {
+    past: history.past.map(onto),
+    present: onto(history.present),
+    future: history.future.map(onto),
+    lastMerge: null,
+  };
+}
+
 function same(a: unknown, b: unknown): boolean {
   return JSON.stringify(a) === JSON.stringify(b);
 }

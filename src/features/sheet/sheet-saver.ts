@@ -5,7 +5,7 @@ import { EditConflict, type ProjectStore } from '../../lib/project-store/project
 const SAVE_AFTER_MS = 600;
 const TRY_AGAIN_MS = 4000;
 
-export type SaveState = 'saved' | 'saving' | 'not-saved';
+export type SaveState = 'saved' | 'saving' | 'not-saved' | 'refused';
 interface SaverEvents {
   onState(state: SaveState): void;
   onSaved(sheet: Sheet): void;
@@ -47,13 +47,18 @@ export class SheetSaver {
     this.events.onTheirs(base, theirs);
   }
 
-  async save(): Promise<void> {
+  /** A question is open: nothing is sent until it is answered. */
+  hold(): void {
+    clearTimeout(this.timer);
+  }
+
+  async save({ isLeaving = false } = {}): Promise<void> {
     clearTimeout(this.timer);
     if (!this.isDirty || this.isSending) return;
     this.isSending = true;
     const content = this.wanted;
     try {
-      const saved = await this.store.sheets.update(this.seen, { content });
+      const saved = await this.store.sheets.update(this.seen, { content }, isLeaving ? { keepalive: true } : {});
       this.seen = { ...saved, content };
       this.events.onSaved(saved);
       this.events.onState(this.isDirty ? 'saving' : 'saved');
@@ -66,7 +71,7 @@ export class SheetSaver {
   }
 
   dispose(): void {
-    void this.save();
+    void this.save({ isLeaving: true });
     clearTimeout(this.timer);
   }
 
@@ -79,7 +84,7 @@ export class SheetSaver {
       return;
     }
     const isRefused = error instanceof ApiError && error.status >= 400 && error.status < 500;
-    this.events.onState('not-saved');
+    this.events.onState(isRefused ? 'refused' : 'not-saved');
     if (!isRefused) this.saveAfter(TRY_AGAIN_MS);
   }
 

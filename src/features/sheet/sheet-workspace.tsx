@@ -6,6 +6,7 @@ import { Button } from '../../components/button.js';
 import { useChartStore } from '../../components/chart/use-chart-store.js';
 import { DropPage } from '../../components/drop-page.js';
 import { StatusWord } from '../../components/status-word.js';
+import { classNames } from '../../lib/class-names.js';
 import { handFiles } from '../../lib/handed-files.js';
 import { useProjectStore } from '../../lib/project-store/store-context.js';
 import { ChartPane, chartStateOf } from './chart-pane.js';
@@ -41,7 +42,7 @@ export function SheetWorkspace({ sheet, slots, frame, opensUnpack }: SheetWorksp
     handFiles([...files]);
     setIsUnpacking(true);
   };
-  const pushRange = useRangeHistory((ranges) => state.edit(change(ranges)));
+  const pushRange = useRangeHistory(state.content, (ranges) => state.edit(change(ranges)));
   const chartState = useMemo(() => chartStateOf(state.content), [state.content]);
   const store = useChartStore(chartState, (next, kind) => {
     state.edit(change(next), kind === 'cursor' ? 'cursor' : undefined);
@@ -94,9 +95,17 @@ function SheetBar({ state }: { state: ReturnType<typeof useSheetContent> }) {
   const isLost = state.saveState === 'not-saved' || (kind === 'server' && !isOnline);
   return (
     <>
-      <span role="status" className="text-note whitespace-nowrap text-soft max-sm:sr-only">
+      <span
+        role="status"
+        className={classNames(
+          'text-note text-soft',
+          !isLost && state.saveState !== 'refused' && 'whitespace-nowrap max-sm:sr-only',
+        )}
+      >
         {readOnlyReason !== undefined ? (
           words.readOnly
+        ) : state.saveState === 'refused' ? (
+          <StatusWord tone="out">{words.refused}</StatusWord>
         ) : isLost ? (
           <StatusWord tone="old">{words.notSaved}</StatusWord>
         ) : state.saveState === 'saving' ? (

@@ -39,7 +39,7 @@ async function addSample(store: LocalStore): Promise<string> {
   const inputs = Object.fromEntries(
     Object.entries(assignRoles(definition, candidates).roles).map(([role, list]) => [
       role,
-      list.map((each) => ({ ...each })),
+      list.map(({ sweepId }) => ({ sweepId, keys: {} })),
     ]),
   );
   const card = {

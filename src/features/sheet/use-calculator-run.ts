@@ -17,7 +17,7 @@ export interface RunProgress {
   readonly startedAt: number;
 }
 export type RunState =
-  | { readonly kind: 'waiting' } // inputs are missing or still on their way
+  | { readonly kind: 'waiting'; readonly before: Output | undefined } // inputs are missing or still on their way
   | { readonly kind: 'running'; readonly progress: RunProgress; readonly before: Output | undefined }
   | { readonly kind: 'stopped'; readonly before: Output | undefined }
   | { readonly kind: 'failed'; readonly error: unknown; readonly before: Output | undefined }
@@ -37,27 +37,35 @@ interface Wanted {
   readonly parts: ResultInputs;
   readonly inputs: readonly CardInput[];
   readonly points: ReadonlyMap<string, Points>;
+  /** Every input is here: nothing is missing, nothing in the bin. */
+  readonly areInputsHere: boolean;
   /** Runs by itself after a change; without it, only when asked. */
   readonly isAutomatic: boolean;
 }
 
 /** Runs a card's calculator in a worker, 400 ms after the last change; Stop ends the worker itself. */
-export function useCalculatorRun({ definition, parts, inputs, points, isAutomatic }: Wanted) {
-  const [state, setState] = useState<RunState>({ kind: 'waiting' });
+export function useCalculatorRun({ definition, parts, inputs, points, areInputsHere, isAutomatic }: Wanted) {
+  const [state, setState] = useState<RunState>({ kind: 'waiting', before: undefined });
   const job = useRef<Job<Output>>(undefined);
+  const runningIdentity = useRef('');
   const identity = resultIdentity(parts);
   const wanted = useRef({ parts, inputs, points });
   wanted.current = { parts, inputs, points };
-  const isComplete = Object.entries(definition.roles).every(
-    ([role, { least }]) => inputs.filter((input) => input.role === role).length >= least,
-  );
-  const isReady = isComplete && inputs.every(({ sweep }) => points.has(sweep.revision.pointsSha256));
+  const isReady = areInputsHere && inputs.every(({ sweep }) => points.has(sweep.revision.pointsSha256));
+
+  /** Ends what runs, without a word: something else has taken its place. */
+  const drop = useCallback(() => {
+    const old = job.current;
+    job.current = undefined;
+    runningIdentity.current = '';
+    old?.stop();
+  }, []);
 
   const run = useCallback(() => {
     const { parts: asked, inputs: given, points: known } = wanted.current;
     const roles = roleInputs(given, known);
     if (!roles) return;
-    job.current?.stop();
+    drop();
     const startedAt = performance.now();
     const showProgress = (done: number, total: number, label?: string) =>
       setState((now) => ({ kind: 'running', progress: { done, total, label, startedAt }, before: outputOf(now) }));
@@ -69,43 +77,45 @@ export function useCalculatorRun({ definition, parts, inputs, points, isAutomati
     );
     job.current = own;
     const made = resultIdentity(asked);
+    runningIdentity.current = made;
     own.done.then(
       (output) => {
         remember(made, output);
-        if (job.current === own) setState({ kind: 'done', output, identity: made });
+        if (job.current !== own) return;
+        runningIdentity.current = '';
+        setState({ kind: 'done', output, identity: made });
       },
       (error: unknown) => {
         if (job.current !== own) return;
-        const isStop = error instanceof JobStopped;
-        setState((now) =>
-          isStop ? { kind: 'stopped', before: outputOf(now) } : { kind: 'failed', error, before: outputOf(now) },
-        );
+        runningIdentity.current = '';
+        setState((now) => endedBy(error, outputOf(now)));
       },
     );
-  }, [definition]);
+  }, [definition, drop]);
 
   useEffect(() => {
+    if (runningIdentity.current === identity) return;
+    drop();
     const known = remembered.get(identity);
-    if (known) {
-      job.current = undefined;
-      setState({ kind: 'done', output: known, identity });
-      return;
+    if (known) setState({ kind: 'done', output: known, identity });
+    else if (!isReady) setState((now) => ({ kind: 'waiting', before: outputOf(now) }));
+    else if (isAutomatic) {
+      const timer = setTimeout(run, RUN_AFTER_MS);
+      return () => clearTimeout(timer);
     }
-    if (!isReady) {
-      setState({ kind: 'waiting' });
-      return;
-    }
-    if (!isAutomatic) return;
-    const timer = setTimeout(run, RUN_AFTER_MS);
-    return () => clearTimeout(timer);
-  }, [identity, isReady, isAutomatic, run]);
+  }, [identity, isReady, isAutomatic, run, drop]);
 
-  useEffect(() => () => job.current?.stop(), []);
+  useEffect(() => drop, [drop]);
   const stop = useCallback(() => job.current?.stop(), []);
-  return { state, run, stop };
+  /** The output on show follows from what the card asks now. */
+  const isCurrent = state.kind === 'done' && state.identity === identity;
+  return { state, run, stop, isCurrent };
+}
+
+function endedBy(error: unknown, before: Output | undefined): RunState {
+  return error instanceof JobStopped ? { kind: 'stopped', before } : { kind: 'failed', error, before };
 }
 
 export function outputOf(state: RunState): Output | undefined {
-  if (state.kind === 'done') return state.output;
-  return state.kind === 'waiting' ? undefined : state.before;
+  return state.kind === 'done' ? state.output : state.before;
 }

@@ -12,7 +12,10 @@ import { outputOf, useCalculatorRun } from './use-calculator-run.js';
 /** A card as it stands: what it shows, whether that is kept, and why it may be out of date. */
 export function useCard(card: Card, definition: CalculatorDefinition) {
   const { sheetId, state, sweeps, results, areResultsHere, points, setOverlay } = useSheetScene();
-  const inputs = cardInputs(card, sweeps);
+  const { inputs, isAnyMissing } = cardInputs(card, definition, sweeps);
+  const isComplete = Object.entries(definition.roles).every(
+    ([role, { least }]) => (card.inputs[role]?.length ?? 0) >= least,
+  );
   const parts = cardIdentityParts(card, definition, inputs);
   const kept: Result | undefined = results.find(({ id }) => id === card.resultId);
   const run = useCalculatorRun({
@@ -20,6 +23,7 @@ export function useCard(card: Card, definition: CalculatorDefinition) {
     parts,
     inputs,
     points,
+    areInputsHere: isComplete && !isAnyMissing,
     isAutomatic: definition.quick && !kept && (card.resultId === null || areResultsHere),
   });
   const reasons: StaleReason[] = kept ? staleReasons(kept, parts) : [];
@@ -39,20 +43,21 @@ export function useCard(card: Card, definition: CalculatorDefinition) {
     reasons,
     output,
     run: run.state,
-    isComplete: Object.entries(definition.roles).every(
-      ([role, { least }]) => (card.inputs[role]?.length ?? 0) >= least,
-    ),
+    isComplete,
+    isAnyMissing,
+    /** What is shown is what the card asks now; else it is hatched. */
+    isCurrent: kept ? reasons.length === 0 : run.isCurrent,
     stop: run.stop,
     /** Computes anew what the card asks now. A kept result stays where it was; the card lets go of it. */
     runAgain: () => {
       if (card.resultId !== null) state.edit(changeCard(card.id, { resultId: null }));
-      run.run();
+      if (card.resultId === null || !run.isCurrent) run.run();
     },
-    canKeep: run.state.kind === 'done' && !kept,
+    canKeep: run.isCurrent && !kept,
     isKeeping: keeping.isPending,
     keepError: keeping.error,
     keep: () => {
-      if (run.state.kind !== 'done') return;
+      if (run.state.kind !== 'done' || !run.isCurrent) return;
       keeping.mutate(keptResult(parts, sheetId, itemId, run.state.output), {
         onSuccess: (result) => state.edit(changeCard(card.id, { resultId: result.id })),
       });

@@ -6,20 +6,21 @@ type Ranges = Pick<
   ChartState,
   'frequencyRangeHz' | 'magnitudeRangeOhm' | 'phaseRangeDeg' | 'realRangeOhm' | 'imaginaryRangeOhm'
 >;
-const EVERYTHING: Ranges = {
-  frequencyRangeHz: null,
-  magnitudeRangeOhm: null,
-  phaseRangeDeg: null,
-  realRangeOhm: null,
-  imaginaryRangeOhm: null,
-};
+const rangesOf = ({
+  frequencyRangeHz,
+  magnitudeRangeOhm,
+  phaseRangeDeg,
+  realRangeOhm,
+  imaginaryRangeOhm,
+}: Ranges): Ranges => ({ frequencyRangeHz, magnitudeRangeOhm, phaseRangeDeg, realRangeOhm, imaginaryRangeOhm });
 
-/** Ranges are in the browser's history: Back goes to the range before. Answers what puts a new one there. */
-export function useRangeHistory(onBack: (ranges: Ranges) => void): (state: ChartState) => void {
+/** Ranges are in the browser's history: Back goes to the range before, at last to the one that was shown on arrival. Answers what puts a new one there. */
+export function useRangeHistory(shown: Ranges, onBack: (ranges: Ranges) => void): (state: ChartState) => void {
   const navigate = useNavigate();
   const location = useLocation();
   const type = useNavigationType();
   const isFirst = useRef(true);
+  const arrival = useRef(shown);
   const latest = useRef(onBack);
   latest.current = onBack;
   useEffect(() => {
@@ -27,13 +28,10 @@ export function useRangeHistory(onBack: (ranges: Ranges) => void): (state: Chart
     isFirst.current = false;
     if (type !== 'POP' || isArrival) return;
     const { ranges } = (location.state ?? {}) as { ranges?: Ranges };
-    latest.current(ranges ?? EVERYTHING);
+    latest.current(ranges ?? rangesOf(arrival.current));
   }, [location, type]);
   return useCallback(
-    ({ frequencyRangeHz, magnitudeRangeOhm, phaseRangeDeg, realRangeOhm, imaginaryRangeOhm }: ChartState) => {
-      const ranges = { frequencyRangeHz, magnitudeRangeOhm, phaseRangeDeg, realRangeOhm, imaginaryRangeOhm };
-      void navigate('.', { state: { ranges }, preventScrollReset: true });
-    },
+    (state: ChartState) => void navigate('.', { state: { ranges: rangesOf(state) }, preventScrollReset: true }),
     [navigate],
   );
 }

@@ -6,6 +6,7 @@ import {
   type EditHistory,
   edited,
   mergeContents,
+  rebased,
   redone,
   type SheetEdit,
   startHistory,
@@ -14,8 +15,8 @@ import {
 import { type SaveState, SheetSaver } from './sheet-saver.js';
 
 export interface Clash {
+  readonly base: SheetContent; // what both started from
   readonly theirs: SheetContent;
-  readonly merged: SheetContent;
   readonly fields: readonly (keyof SheetContent)[];
 }
 export interface SheetState {
@@ -39,20 +40,20 @@ export function useSheetContent(sheet: Sheet): SheetState {
   const [clash, setClash] = useState<Clash | null>(null);
   const present = useRef(history.present);
   present.current = history.present;
-  const show = useCallback((content: SheetContent) => setHistory((now) => ({ ...now, present: content })), []);
-  const takeTheirs = useCallback(
-    (base: SheetContent, theirs: Sheet) => {
-      const { content, clashes } = mergeContents(base, present.current, theirs.content);
-      if (clashes.length === 0) show(content);
-      else setClash({ theirs: theirs.content, merged: content, fields: clashes });
-    },
-    [show],
-  );
+  const takeTheirs = useCallback((base: SheetContent, theirs: Sheet) => {
+    const { clashes } = mergeContents(base, present.current, theirs.content);
+    if (clashes.length === 0) setHistory((now) => rebased(now, base, theirs.content));
+    else setClash({ base, theirs: theirs.content, fields: clashes });
+  }, []);
   const saveState = useSaver(sheet, history.present, clash !== null, takeTheirs);
   const settleClash = (whose: 'mine' | 'theirs') => {
     if (!clash) return;
-    const theirFields = Object.fromEntries(clash.fields.map((field) => [field, clash.theirs[field]]));
-    show(whose === 'mine' ? clash.merged : { ...clash.merged, ...theirFields });
+    const { base, theirs, fields } = clash;
+    const disputed = Object.fromEntries(fields.map((field) => [field, theirs[field]]));
+    setHistory((now) => {
+      const merged = rebased(now, base, theirs);
+      return whose === 'mine' ? merged : { ...merged, present: { ...merged.present, ...disputed } };
+    });
     setClash(null);
   };
   return {
@@ -86,7 +87,7 @@ function useSaver(
       onTheirs,
     });
     saver.current = own;
-    const leave = () => void own.save();
+    const leave = () => void own.save({ isLeaving: true });
     window.addEventListener('pagehide', leave);
     return () => {
       window.removeEventListener('pagehide', leave);
@@ -94,8 +95,11 @@ function useSaver(
     };
   }, [store, client, onTheirs]);
   useEffect(() => {
-    if (!isHeld) saver.current?.want(content);
+    if (isHeld) saver.current?.hold();
+    else saver.current?.want(content);
   }, [content, isHeld]);
-  useEffect(() => saver.current?.receive(sheet), [sheet]);
+  useEffect(() => {
+    if (!isHeld) saver.current?.receive(sheet);
+  }, [sheet, isHeld]);
   return saveState;
 }

@@ -8,7 +8,7 @@ export function useWorkspaceKeys(state: SheetState): void {
   latest.current = state;
   useEffect(() => {
     const hear = (event: KeyboardEvent) => {
-      if (event.defaultPrevented) return;
+      if (event.defaultPrevented || document.querySelector('dialog[open]')) return;
       if (event.key === 'F6' && !event.ctrlKey && !event.altKey) {
         if (focusNextPane(event.shiftKey)) event.preventDefault();
         return;

@@ -26,13 +26,18 @@ export interface KnownSource {
 /** What moved in the project, from another tab or another person: the rows of this kind are to be fetched again. */
 export type StoreEntity = 'project' | 'item' | 'sweep' | 'sheet' | 'result';
 
+export interface UpdateOptions {
+  /** Goes through even if the page is left meanwhile. */
+  readonly keepalive?: boolean;
+}
+
 /** Rows that are edited one by one. An edit takes the row as it was seen: someone else's edit meanwhile is merged or
  * thrown as EditConflict. Deleting puts into the bin; `restore` takes it out again. */
 export interface Rows<Row, Create, Update> {
   list(): Promise<Row[]>;
   get(id: string): Promise<Row>;
   add(row: Create): Promise<Row>;
-  update(seen: Row, change: Update): Promise<Row>;
+  update(seen: Row, change: Update, options?: UpdateOptions): Promise<Row>;
   delete(seen: Row): Promise<void>;
   restore(id: string): Promise<Row>;
 }

@@ -54,11 +54,11 @@ function serverRows<Row extends Versioned, Create, Update extends object>(at: Ro
     list: () => allPages(at.collection, at.page),
     get: (id) => api.get(one(id), at.row),
     add: (row) => api.post(at.collection, row, at.row),
-    update: (seen, change) =>
+    update: (seen, change, { keepalive = false } = {}) =>
       mergeEdit(
         seen,
         change,
-        (version, edited) => api.patch(one(seen.id), edited, at.row, { version }),
+        (version, edited) => api.patch(one(seen.id), edited, at.row, { version, keepalive }),
         () => api.get(one(seen.id), at.row),
       ),
     delete: (seen) => api.delete(one(seen.id), { version: seen.version }),

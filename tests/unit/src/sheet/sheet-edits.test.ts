@@ -45,3 +45,10 @@ it('merges what two people changed in different places and names what both chang
   expect(clashes).toEqual(['cursorAHz']);
   expect(content).toMatchObject({ frequencyScale: 'linear', magnitudeScale: 'linear', cursorAHz: 40 });
 });
+
+it('undoes only one’s own edits after somebody else’s were merged in', () => {
+  const own = edits.edited(edits.startHistory(empty), edits.change({ cursorAHz: 40 }));
+  const theirs = edits.change({ magnitudeScale: 'linear' })(empty);
+  const undone = edits.undone(edits.rebased(own, empty, theirs));
+  expect(undone.present).toMatchObject({ cursorAHz: null, magnitudeScale: 'linear' });
+});

@@ -77,3 +77,21 @@ it('hands on what somebody else saved, and sends the next edit onto their versio
   await vi.advanceTimersByTimeAsync(700);
   expect(update.mock.calls[1]?.[0].version).toBe(5);
 });
+
+it('says that a change was refused instead of trying it again for ever', async () => {
+  const update = vi.fn<Update>().mockRejectedValue(new ApiError('access-denied', 'no', 403));
+  const { saver, states } = saverWith(update);
+  saver.want(change({ cursorAHz: 30 })(empty));
+  await vi.advanceTimersByTimeAsync(20_000);
+  expect(update).toHaveBeenCalledTimes(1);
+  expect(states.at(-1)).toBe('refused');
+});
+
+it('sends nothing while a question is open', async () => {
+  const update = vi.fn<Update>();
+  const { saver } = saverWith(update);
+  saver.want(change({ cursorAHz: 30 })(empty));
+  saver.hold();
+  await vi.advanceTimersByTimeAsync(5000);
+  expect(update).not.toHaveBeenCalled();
+});
