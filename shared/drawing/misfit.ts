@@ -9,6 +9,7 @@ import { axisScale } from './scales/axis-scale.js';
 import { frequencyFit } from './scales/ranges.js';
 import { ticksOf } from './scales/ticks.js';
 import { textWidthPx } from './text-width.js';
+import { shortQuantity } from './words/describe.js';
 
 /** What a model leaves over, against frequency: flat noise is good, a shape means that the model misses something. */
 export interface MisfitLine {
@@ -40,7 +41,7 @@ export function drawMisfit(input: MisfitInput): Primitive[] {
     items.push({ kind: 'line', x1: frame.x, y1: y, x2: frame.x + frame.width, y2: y, stroke: { color, width: 1 } });
     if (tick.label) items.push(number(tick.label, frame.x - 8, tick.px + 4, 'end', TEXT_PX, theme.soft));
   }
-  for (const tick of ticksOf(frequency, { labelGapPx: 34, ...options })) {
+  for (const tick of ticksOf(frequency, { labelGapPx: 34, labelWidthPx: tickWidth, ...options })) {
     const x = Math.round(tick.px) + 0.5;
     const color = tick.label ? theme.gridStrong : theme.grid;
     items.push({ kind: 'line', x1: x, y1: frame.y, x2: x, y2: frame.y + frame.height, stroke: { color, width: 1 } });
@@ -61,6 +62,8 @@ export function drawMisfit(input: MisfitInput): Primitive[] {
   items.push({ kind: 'rect', ...crisp(frame), stroke: { color: theme.ink, width: 1.25 } });
   return [...items, ...titles(input, frame)];
 }
+
+const tickWidth = (label: string): number => textWidthPx(label, 'num', TEXT_PX);
 
 function titles({ lines, theme, heightPx }: MisfitInput, frame: Rect): Primitive[] {
   const word = (text: string, x: number, y: number, anchor: 'start' | 'end' | 'middle'): Primitive => ({
@@ -114,9 +117,5 @@ export function describeMisfit(lines: readonly MisfitLine[], locale?: string): s
   }
   if (count === 0) return chart.misfit.none;
   const percent = (value: number) => formatPlain(value * 100, 2, locale);
-  return chart.misfit.sentence(
-    percent(Math.sqrt(sum / count)),
-    percent(worst),
-    `${formatPlain(worstHz, 3, locale)}\u00A0Hz`,
-  );
+  return chart.misfit.sentence(percent(Math.sqrt(sum / count)), percent(worst), shortQuantity(worstHz, 'Hz', locale));
 }

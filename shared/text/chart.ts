@@ -17,14 +17,12 @@ export const chart = {
     real: 'Real part',
     imaginary: 'Imaginary part',
   },
-  noPhase: 'No phase in this sweep',
   phaseUnwrapped: 'unwrapped',
   phaseTurned: 'sign turned on reading',
   revision: (number: number) => `Revision ${number}`,
   zoomHint: (isMac: boolean) => `Hold ${isMac ? '⌘' : 'Ctrl'} or click the chart to zoom`,
   keysHint:
     'Arrow keys move the cursor, A and B choose it, P and D go to the next peak and dip, plus and minus zoom, 0 fits all.',
-  empty: 'Nothing is drawn yet.',
 
   controls: {
     name: 'Chart controls',
@@ -39,13 +37,14 @@ export const chart = {
     toField: 'Frequency to, Hz',
     left: 'Pan left',
     right: 'Pan right',
-    up: 'Pan up',
-    down: 'Pan down',
     log: 'log',
     linear: 'linear',
     frequencyScale: 'Frequency axis',
     magnitudeScale: 'Magnitude axis',
     unwrap: 'Unwrap phase',
+    axes: 'Axes',
+    axis: 'Axis',
+    scale: 'Scale',
     setRange: 'Set',
     axisDialog: (quantity: string) => `${quantity}: exact values`,
     lowest: 'Least',
@@ -62,9 +61,7 @@ export const chart = {
     remove: (cursor: 'A' | 'B') => `Remove cursor ${cursor}`,
     none: 'not set',
     nextPeak: 'Next peak',
-    previousPeak: 'Previous peak',
     nextDip: 'Next dip',
-    previousDip: 'Previous dip',
     here: (cursor: 'A' | 'B') => `Cursor ${cursor} here`,
     noMore: 'No further one in this direction.',
   },
@@ -73,21 +70,9 @@ export const chart = {
     marker: 'Marker here',
     note: 'Note here',
   },
-  readout: {
-    name: 'Readout',
-    sweep: 'Sweep',
-    difference: 'B − A',
-    ratio: 'B ÷ A',
-    atPoint: 'at a measured point',
-    between: 'between two points: |Z| and phase straight over ln f, as drawn',
-    outside: 'outside this sweep',
-    how: 'Values between two points are read from the drawn line: |Z| and phase go straight over the logarithm of frequency.',
-    octaves: (octaves: string) => `${octaves} octaves`,
-  },
   spoken: {
     cursor: (cursor: string, frequency: string, values: string, sweep: string) =>
       `${cursor}: ${frequency}, ${values}, ${sweep}`,
-    range: (from: string, to: string) => `Showing ${from} to ${to}`,
     sweep: (name: string) => `${name} chosen`,
     log: (axis: string) => `${axis} logarithmic`,
     linear: (axis: string) => `${axis} linear`,
@@ -95,7 +80,6 @@ export const chart = {
   twins: {
     asTable: 'As table',
     asSentence: 'As sentence',
-    hide: 'Hide',
     caption: (name: string, shown: number, all: number) =>
       shown === all
         ? `${name}: all ${all} points`
@@ -136,11 +120,10 @@ export const chart = {
   },
   misfit: {
     name: 'Misfit over frequency',
-    real: 'real part',
-    imaginary: 'imaginary part',
+    real: 'in |Z|',
+    imaginary: 'in phase',
     none: 'There is no misfit to draw.',
     sentence: (rms: string, worst: string, hz: string) =>
       `Misfit ${rms}\u00A0% on average, at most ${worst}\u00A0% at ${hz}.`,
   },
-  locusName: 'Locus',
 } as const;

@@ -231,6 +231,21 @@ test.describe('by keys alone', () => {
     await settled(page, (now) => now.cursorAHz === null);
   });
 
+  test('every axis has its exact values by keyboard, and the phase unwraps when asked', async ({ page }) => {
+    await open(page);
+    await page.getByRole('button', { name: 'Axes' }).press('Enter');
+    await page.getByLabel('Axis', { exact: true }).selectOption('phase');
+    const dialog = page.getByRole('dialog', { name: /^Phase/ });
+    await dialog.getByLabel('Unwrap phase').check();
+    await settled(page, (now) => now.isPhaseUnwrapped);
+    await dialog.getByLabel('Least').fill('-45');
+    await dialog.getByLabel('Most').fill('45');
+    await page.keyboard.press('Enter');
+    await settled(page, (now) => now.phaseRangeDeg?.[0] === -45 && now.phaseRangeDeg[1] === 45);
+    await expect(drawing(page)).toBeFocused();
+    await expect(page.locator('.chart-drawing svg text', { hasText: 'unwrapped' })).toBeVisible();
+  });
+
   test('sentence and table say what the line shows', async ({ page }) => {
     await open(page, 'count=2');
     await page.getByRole('button', { name: 'As sentence' }).click();

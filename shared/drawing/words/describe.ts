@@ -10,11 +10,11 @@ export interface NamedSweep {
   readonly points: ImpedancePoints;
 }
 const MOST_COMPARED = 5;
-const ohm = (value: number, locale?: string) => short(value, 'Ω', locale);
-const hz = (value: number, locale?: string) => short(value, 'Hz', locale);
+const ohm = (value: number, locale?: string) => shortQuantity(value, 'Ω', locale);
+const hz = (value: number, locale?: string) => shortQuantity(value, 'Hz', locale);
 
 /** Three digits without needless zeros: 46.2 Ω, 210 Hz, 20 kHz. */
-function short(value: number, si: 'Ω' | 'Hz', locale?: string): string {
+export function shortQuantity(value: number, si: 'Ω' | 'Hz', locale?: string): string {
   const [shown = '', unit = ''] = formatQuantity(value, si, { digits: 3, locale: 'en' }).split('\u00A0');
   return `${formatPlain(Number(shown.replace('\u2212', '-')), 3, locale)}\u00A0${unit}`;
 }

@@ -1,4 +1,5 @@
 import { type KeyboardEvent, type SubmitEvent, useEffect, useId, useRef, useState } from 'react';
+import type { ScaleKind } from '../../../shared/drawing/scales/axis-scale.js';
 import { formatPlain } from '../../../shared/quantity-text.js';
 import { text } from '../../../shared/text.js';
 import { Button } from '../button.js';
@@ -7,18 +8,24 @@ import { fitAxis, setRange, swapScale } from './chart-actions.js';
 import type { AxisName, ChartView } from './chart-view.js';
 import type { LocalPoint } from './gestures/gesture-target.js';
 import { readEnds } from './read-ends.js';
+import { useSettledState } from './use-chart-store.js';
 
 interface AxisDialogProps {
   readonly view: ChartView;
   readonly axis: AxisName;
   readonly at: LocalPoint;
   readonly locale: string | undefined;
+  readonly onAxis: (axis: AxisName) => void;
   readonly onClose: () => void;
 }
 const words = text.chart.controls;
 
-/** Exact values of one axis, and whether it is logarithmic or linear. */
-export function AxisDialog({ view, axis, at, locale, onClose }: AxisDialogProps) {
+/** Exact values of one axis, whether it is logarithmic or linear, and whether the phase is unwrapped. */
+export function AxisDialog(props: AxisDialogProps) {
+  return <AxisForm key={props.axis} {...props} />;
+}
+
+function AxisForm({ view, axis, at, locale, onAxis, onClose }: AxisDialogProps) {
   const id = useId();
   const box = useRef<HTMLFormElement>(null);
   const [kind, setKind] = useState(view.kindOf(axis));
@@ -61,7 +68,18 @@ export function AxisDialog({ view, axis, at, locale, onClose }: AxisDialogProps)
       onKeyDown={keys}
       noValidate
     >
-      <p className="chart-popover-title">{text.chart.axis[axis]}</p>
+      <select
+        className="chart-button chart-popover-title"
+        aria-label={words.axis}
+        value={axis}
+        onChange={(event) => onAxis(event.target.value as AxisName)}
+      >
+        {(['frequency', ...view.currentLayout().strips.map(({ quantity }) => quantity)] as const).map((name) => (
+          <option key={name} value={name}>
+            {text.chart.axis[name]}
+          </option>
+        ))}
+      </select>
       <div className="chart-ends">
         {[words.lowest, words.highest].map((label, i) => (
           <label key={label}>
@@ -77,17 +95,8 @@ export function AxisDialog({ view, axis, at, locale, onClose }: AxisDialogProps)
           </label>
         ))}
       </div>
-      {(axis === 'frequency' || axis === 'magnitude') && (
-        <fieldset className="chart-choice">
-          <legend className="sr-only">{text.chart.axis[axis]}</legend>
-          {(['log', 'linear'] as const).map((choice) => (
-            <label key={choice}>
-              <input type="radio" name={`${id}-kind`} checked={kind === choice} onChange={() => setKind(choice)} />
-              {words[choice]}
-            </label>
-          ))}
-        </fieldset>
-      )}
+      {(axis === 'frequency' || axis === 'magnitude') && <KindChoice kind={kind} onKind={setKind} />}
+      {axis === 'phase' && <UnwrapChoice view={view} />}
       {error && (
         <p id={`${id}-error`} role="alert" className="chart-error">
           {error}
@@ -107,5 +116,32 @@ export function AxisDialog({ view, axis, at, locale, onClose }: AxisDialogProps)
         </Button>
       </div>
     </form>
+  );
+}
+
+function KindChoice({ kind, onKind }: { kind: ScaleKind; onKind: (kind: ScaleKind) => void }) {
+  const name = useId();
+  return (
+    <fieldset className="chart-choice" aria-label={words.scale}>
+      {(['log', 'linear'] as const).map((choice) => (
+        <label key={choice}>
+          <input type="radio" name={name} checked={kind === choice} onChange={() => onKind(choice)} />
+          {words[choice]}
+        </label>
+      ))}
+    </fieldset>
+  );
+}
+
+function UnwrapChoice({ view }: { view: ChartView }) {
+  const { isPhaseUnwrapped } = useSettledState(view.store);
+  const change = () => view.store.settle({ isPhaseUnwrapped: !isPhaseUnwrapped, phaseRangeDeg: null }, 'view');
+  return (
+    <div className="chart-choice">
+      <label>
+        <input type="checkbox" checked={isPhaseUnwrapped} onChange={change} />
+        {words.unwrap}
+      </label>
+    </div>
   );
 }

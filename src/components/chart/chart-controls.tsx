@@ -25,12 +25,13 @@ interface ChartControlsProps {
   readonly view: ChartView;
   readonly locale: string | undefined;
   readonly onStepBack: () => void;
+  readonly onAxes: () => void; // exact values of every axis
 }
 const words = text.chart.controls;
 const ICON = { size: 18, strokeWidth: 1.75, 'aria-hidden': true } as const;
 
 /** The button, key or typed twin of every drag: zoom, pan, range, scales, cursors, peaks. */
-export function ChartControls({ view, locale, onStepBack }: ChartControlsProps) {
+export function ChartControls({ view, locale, onStepBack, onAxes }: ChartControlsProps) {
   const state = useSettledState(view.store);
   return (
     <fieldset className="chart-controls" aria-label={words.name}>
@@ -70,6 +71,9 @@ export function ChartControls({ view, locale, onStepBack }: ChartControlsProps) 
             onSwap={() => swapScale(view, 'magnitude')}
           />
         )}
+        <button type="button" className="chart-button" onClick={onAxes}>
+          {words.axes}
+        </button>
       </div>
       <CursorFields view={view} locale={locale} />
     </fieldset>

@@ -6,16 +6,30 @@ import { type Picture, usePicture } from './use-picture.js';
 import './pictures.css';
 
 interface MisfitPlotProps {
-  /** Traces of axis `residual`, relative to |Z|: one value, or real and imaginary part. */
+  /** Traces of axis `residual`, relative to |Z|: one value, or ln(Z/model) as its real part (|Z|) and imaginary part (phase). */
   readonly traces: readonly Trace[];
   readonly locale?: string | undefined;
   readonly heightPx?: number;
 }
 
-/** Misfit against frequency, with its sentence under it. */
-export function MisfitPlot({ traces, locale, heightPx = 180 }: MisfitPlotProps) {
+/** Misfit against frequency, one plot for each trace, with its sentence under it. */
+export function MisfitPlot({ traces, ...rest }: MisfitPlotProps) {
+  return (
+    <div className="chart-misfits">
+      {traces.map((trace) => (
+        <OneMisfit key={trace.id} trace={trace} isNamed={traces.length > 1} {...rest} />
+      ))}
+    </div>
+  );
+}
+
+interface OneMisfitProps extends Omit<MisfitPlotProps, 'traces'> {
+  readonly trace: Trace;
+  readonly isNamed: boolean;
+}
+function OneMisfit({ trace, isNamed, locale, heightPx = 180 }: OneMisfitProps) {
   const id = useId();
-  const lines = useMemo(() => traces.flatMap(misfitLines), [traces]);
+  const lines = useMemo(() => misfitLines(trace), [trace]);
   const draw = useCallback<Picture>(
     (widthPx, height, theme) => drawMisfit({ lines, widthPx, heightPx: height, theme, locale }),
     [lines, locale],
@@ -23,11 +37,12 @@ export function MisfitPlot({ traces, locale, heightPx = 180 }: MisfitPlotProps) 
   const svg = usePicture(draw, id);
   return (
     <figure className="chart-misfit">
+      {isNamed && <p className="chart-misfit-name">{trace.label}</p>}
       <svg
         ref={svg}
         className="chart-picture"
         role="img"
-        aria-label={text.chart.misfit.name}
+        aria-label={isNamed ? `${text.chart.misfit.name}. ${trace.label}` : text.chart.misfit.name}
         style={{ height: heightPx }}
       />
       <figcaption>{describeMisfit(lines, locale)}</figcaption>
@@ -43,10 +58,9 @@ function misfitLines({ label, x, y, re, im, yUnit }: Trace): MisfitLine[] {
     frequencyHz,
     relative: Float64Array.from(values, (value) => value * scale),
   });
-  const parts = [
+  return [
     ...(y ? [line(label, y)] : []),
     ...(re ? [line(text.chart.misfit.real, re)] : []),
     ...(im ? [line(text.chart.misfit.imaginary, im)] : []),
   ];
-  return parts;
 }

@@ -1,6 +1,7 @@
 import { type ReactNode, useCallback, useMemo, useState } from 'react';
 import { chartSentence } from '../../../shared/drawing/chart.js';
 import type { ChartContent, ChartState } from '../../../shared/drawing/chart-input.js';
+import { quantitiesOf } from '../../../shared/drawing/layout.js';
 import { text } from '../../../shared/text.js';
 import { AxisDialog } from './axis-dialog.js';
 import { fitAll, stepBack } from './chart-actions.js';
@@ -58,11 +59,19 @@ export function SweepChart(props: SweepChartProps) {
     if (onStepBack) onStepBack();
     else if (view) stepBack(view);
   }, [view, onStepBack]);
+  const [axis, setAxis] = useState<ChosenAxis | null>(null);
   return (
     <figure className={`chart-figure ${props.className ?? ''}`}>
-      <DrawingArea {...props} refs={refs} view={view} spoken={spoken} sentence={sentence} onStepBack={goBack} />
+      <DrawingArea {...props} {...{ refs, view, spoken, sentence, axis }} onChosenAxis={setAxis} onStepBack={goBack} />
       <SpokenValue spoken={spoken} />
-      {view && props.controls !== 'none' && <ChartControls view={view} locale={locale} onStepBack={goBack} />}
+      {view && props.controls !== 'none' && (
+        <ChartControls
+          view={view}
+          locale={locale}
+          onStepBack={goBack}
+          onAxes={() => setAxis({ axis: quantitiesOf(store.get().view)[0], at: { x: 0, y: 0 } })}
+        />
+      )}
       {props.twins !== 'none' && (
         <ChartTwins content={content} store={store} view={view} sentence={sentence} locale={locale} />
       )}
@@ -70,7 +79,13 @@ export function SweepChart(props: SweepChartProps) {
   );
 }
 
+interface ChosenAxis {
+  readonly axis: AxisName;
+  readonly at: LocalPoint;
+}
 interface DrawingAreaProps extends SweepChartProps {
+  readonly axis: ChosenAxis | null;
+  readonly onChosenAxis: (axis: ChosenAxis | null) => void;
   readonly refs: ChartRefs;
   readonly view: ChartView | null;
   readonly spoken: Spoken;
@@ -80,19 +95,18 @@ interface DrawingAreaProps extends SweepChartProps {
 
 /** The sheet itself with what opens over it. */
 function DrawingArea(props: DrawingAreaProps) {
-  const { content, locale, refs, view, spoken, onActiveSweep, letters = CHART_LETTERS } = props;
-  const [axis, setAxis] = useState<{ axis: AxisName; at: LocalPoint } | null>(null);
+  const { content, locale, refs, view, spoken, axis, onChosenAxis, onActiveSweep, letters = CHART_LETTERS } = props;
   const [menu, setMenu] = useState<{ hz: number; at: LocalPoint } | null>(null);
   const hint = useZoomHint();
   const close = useCallback(() => {
-    setAxis(null);
+    onChosenAxis(null);
     setMenu(null);
     refs.root.current?.focus({ preventScroll: true });
-  }, [refs.root]);
+  }, [refs.root, onChosenAxis]);
   const keyDown = useChartGestures(refs.root, view, {
     ...props,
     letters,
-    onAxis: (name, at) => setAxis({ axis: name, at }),
+    onAxis: (name, at) => onChosenAxis({ axis: name, at }),
     onMenu: (hz, at) => setMenu({ hz, at }),
     onHint: hint.show,
     onFitAll: () => view && fitAll(view),
@@ -128,7 +142,15 @@ function DrawingArea(props: DrawingAreaProps) {
         {hint.isShown && <p className="chart-hint">{hint.words}</p>}
         {view && <CursorArrows view={view} onMoved={spoken.sayCursor} />}
       </div>
-      {view && axis && <AxisDialog view={view} {...axis} locale={locale} onClose={close} />}
+      {view && axis && (
+        <AxisDialog
+          view={view}
+          {...axis}
+          locale={locale}
+          onAxis={(name) => onChosenAxis({ ...axis, axis: name })}
+          onClose={close}
+        />
+      )}
       {view && menu && (
         <ChartMenu view={view} {...menu} onMarker={props.onMarker} onNote={props.onNote} onClose={close} />
       )}

@@ -3,6 +3,10 @@ import './page.css';
 import { type CSSProperties, StrictMode, useMemo, useState } from 'react';
 import { createRoot } from 'react-dom/client';
 import { type ChartContent, type ChartState, FITTED_CHART } from '../../../shared/drawing/chart-input.js';
+import { LineSample } from '../../../src/components/chart/line-sample.js';
+import { MiniCurve } from '../../../src/components/chart/mini-curve.js';
+import { MisfitPlot } from '../../../src/components/chart/misfit-plot.js';
+import { StillChart } from '../../../src/components/chart/still-chart.js';
 import { SweepChart } from '../../../src/components/chart/sweep-chart.js';
 import { driverPoints, someSweeps } from './curves.js';
 
@@ -72,8 +76,38 @@ function Page() {
     </main>
   );
 }
+/** ?pieces: the still ones side by side. */
+function Pieces() {
+  const sweeps = useMemo(() => someSweeps(8, 400), []);
+  const misfit = useMemo(() => {
+    const x = Array.from(sweeps[0]?.points.frequencyHz ?? []);
+    const wave = (phase: number) => x.map((f, i) => 0.004 * Math.sin(Math.log(f) * 9 + phase) * Math.cos(i * 1.7));
+    return [
+      {
+        id: 'misfit',
+        label: 'Misfit: W-0417',
+        x,
+        re: wave(0),
+        im: wave(1),
+        xUnit: 'Hz',
+        yUnit: '1',
+        axis: 'residual' as const,
+      },
+    ];
+  }, [sweeps]);
+  return (
+    <main>
+      {sweeps.map((sweep) => (
+        <p key={sweep.id}>
+          <LineSample number={sweep.lineNumber} /> {sweep.name}
+        </p>
+      ))}
+      <MisfitPlot traces={misfit} locale="en" />
+      {sweeps[0] && <MiniCurve points={sweeps[0].points} label="W-0417" />}
+      <StillChart content={{ sweeps: sweeps.slice(0, 1), title: 'A driver in free air' }} className="still" />
+    </main>
+  );
+}
 createRoot(document.getElementById('root') ?? document.body).render(
-  <StrictMode>
-    <Page />
-  </StrictMode>,
+  <StrictMode>{asked.has('pieces') ? <Pieces /> : <Page />}</StrictMode>,
 );
