@@ -53,7 +53,7 @@ export function makeParts(inputs: AppInputs, onClose: AppParts['onClose']): AppP
     onClose,
     access: new Access(dataSource),
     cookies: new SessionCookies(keys, isSecure),
-    account: new AccountService(dataSource, sessions, jobs, now),
+    account: new AccountService(dataSource, sessions, jobs, keys, now),
     me: new MeService(dataSource),
     limits: new RateLimits(dataSource, inputs.allowances),
   };

@@ -55,6 +55,7 @@ export const ERROR_STATUS = {
   'session-ended': 401,
   'link-not-open': 410, // used, ended and unknown links answer alike
   'not-verified': 403,
+  'password-needed': 403, // the link was opened in another browser than the one that registered
   'access-denied': 403,
   'cross-site': 403,
   'not-found': 404,

@@ -5,16 +5,19 @@ import type { Keys } from './keys.js';
 export const SESSION_DAYS = 30;
 const LIFE_MS = SESSION_DAYS * 86_400_000;
 const REFRESH_PATH = '/api/account';
+const VERIFY_PATH = '/api/account/verify';
+const REGISTRATION_MS = 7 * 86_400_000; // a letter can be asked for again
 
 export interface Tokens {
   readonly access: string;
   readonly refresh: string;
 }
 
-/** The two cookies of a session: out of reach for scripts, sent from our own pages only, over TLS but on loopback. */
+/** The two cookies of a session, and the one of a registration that waits for its letter: out of reach for scripts, sent from our own pages only, over TLS but on loopback. */
 export class SessionCookies {
   private readonly accessName: string;
   private readonly refreshName: string;
+  private readonly registrationName: string;
 
   constructor(
     keys: Keys,
@@ -22,6 +25,7 @@ export class SessionCookies {
   ) {
     this.accessName = `hummock-access-${keys.cookieSuffix}`;
     this.refreshName = `hummock-refresh-${keys.cookieSuffix}`;
+    this.registrationName = `hummock-registration-${keys.cookieSuffix}`;
   }
 
   set(response: Response, tokens: Tokens): void {
@@ -32,6 +36,16 @@ export class SessionCookies {
   clear(response: Response): void {
     response.clearCookie(this.accessName, this.options('/api'));
     response.clearCookie(this.refreshName, this.options(REFRESH_PATH));
+  }
+
+  setRegistration(response: Response, proof: string): void {
+    response.cookie(this.registrationName, proof, { ...this.options(VERIFY_PATH), maxAge: REGISTRATION_MS });
+  }
+  clearRegistration(response: Response): void {
+    response.clearCookie(this.registrationName, this.options(VERIFY_PATH));
+  }
+  registrationOf(request: Request): string | undefined {
+    return cookieOf(request, this.registrationName);
   }
 
   accessOf(request: Request): string | undefined {

@@ -4,6 +4,7 @@ import { hkdfSync } from 'node:crypto';
 export interface Keys {
   readonly accessToken: Uint8Array;
   readonly refreshToken: Uint8Array;
+  readonly registration: Uint8Array;
   readonly cookieSuffix: string; // tells the cookies of two installations on one host apart: cookies ignore the port
 }
 
@@ -13,6 +14,7 @@ export function keysFrom(secret: string): Keys {
   return {
     accessToken: derive('access token', 32),
     refreshToken: derive('refresh token', 32),
+    registration: derive('registration', 32),
     cookieSuffix: Buffer.from(derive('cookie names', 3)).toString('hex'),
   };
 }

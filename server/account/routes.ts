@@ -37,20 +37,23 @@ export function accountRouter({ account, sessions, cookies, me, limits }: Parts)
     const input = RegisterSchema.parse(request.body);
     await limits.spend('register-origin', origin(request));
     await limits.spend('mail-address', input.email);
-    await evenly(() => account.register(input));
+    cookies.setRegistration(response, await evenly(() => account.register(input)));
     answer(response, LetterSentSchema, { email: input.email }, 202);
   });
   router.post('/account/verify', async (request, response) => {
-    const { code } = VerifySchema.parse(request.body);
+    const { code, password } = VerifySchema.parse(request.body);
     await limits.spend('code-origin', origin(request));
-    await welcome(response, await account.verify(code, device(request)));
+    const proof = { registration: cookies.registrationOf(request), password };
+    const signedIn = await account.verify(code, proof, device(request));
+    cookies.clearRegistration(response);
+    await welcome(response, signedIn);
   });
   router.post('/account/sign-in', async (request, response) => {
     const input = SignInSchema.parse(request.body);
     await limits.spend('sign-in-origin', origin(request));
-    await limits.spend('sign-in-address', input.email);
     const pair = `${input.email} ${origin(request)}`;
-    await limits.spend('sign-in-pair', pair);
+    await limits.spend('sign-in-pair', pair); // first: a place that has used up its own tries takes none from others
+    await limits.spend('sign-in-address', input.email);
     const signedIn = await account.signIn(input, device(request));
     await limits.clear('sign-in-pair', pair); // a right password starts anew
     await welcome(response, signedIn);
@@ -82,6 +85,7 @@ export function accountRouter({ account, sessions, cookies, me, limits }: Parts)
 /** At least this long for every address, so that the time does not tell a known one from a new one. */
 const EVEN_MS = 150;
 
-async function evenly(work: () => Promise<void>): Promise<void> {
-  await Promise.all([work(), new Promise((resolve) => setTimeout(resolve, EVEN_MS))]);
+async function evenly<T>(work: () => Promise<T>): Promise<T> {
+  const [done] = await Promise.all([work(), new Promise((resolve) => setTimeout(resolve, EVEN_MS))]);
+  return done;
 }

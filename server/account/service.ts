@@ -8,13 +8,21 @@ import { MembershipEntity, TeamEntity } from '../database/entities/team.entity.j
 import { violates } from '../database/violates.js';
 import type { Jobs } from '../jobs/jobs.js';
 import type { Tokens } from './cookies.js';
+import type { Keys } from './keys.js';
 import { spendCode, voidCodes } from './mail-codes.js';
 import { opens, passwordHash } from './passwords.js';
+import { provesRegistration, registrationProof } from './registration-proof.js';
 import type { Sessions } from './sessions.js';
 
 export interface SignedIn {
   readonly personId: string;
   readonly tokens: Tokens;
+}
+
+/** Shows that whoever opens the letter's link also chose the password: the cookie of the registration, or the password. */
+export interface RegistrationProof {
+  readonly registration: string | undefined;
+  readonly password: string | undefined;
 }
 
 const PERSON_EMAIL_KEY = 'person_email_key';
@@ -25,10 +33,12 @@ export class AccountService {
     private readonly dataSource: DataSource,
     private readonly sessions: Sessions,
     private readonly jobs: Jobs,
+    private readonly keys: Keys,
     private readonly now: () => Date,
   ) {}
 
-  async register(input: Register): Promise<void> {
+  /** Answers what the browser keeps to prove that it registered; of a confirmed address, something that proves nothing. */
+  async register(input: Register): Promise<string> {
     const hash = await passwordHash(input.password);
     try {
       await this.dataSource.transaction((manager) => this.makePerson(manager, input, hash));
@@ -36,6 +46,7 @@ export class AccountService {
       if (!violates(error, PERSON_EMAIL_KEY)) throw error;
       await this.dataSource.transaction((manager) => this.registerAgain(manager, input, hash));
     }
+    return registrationProof(this.keys, input.email, hash);
   }
 
   private async makePerson(manager: EntityManager, input: Register, hash: string): Promise<void> {
@@ -84,17 +95,31 @@ export class AccountService {
     await this.jobs.add(this.dataSource.manager, 'send-letter', { kind: 'verify', email });
   }
 
-  async verify(code: string, device: string): Promise<SignedIn> {
+  /**
+   * Confirms the address, ends every session and opens one here. The letter proves the address only: a stranger may
+   * have registered it with a password of their own. So the proof of the registration is asked for too, and without
+   * it nothing happens and the code stays open.
+   */
+  async verify(code: string, proof: RegistrationProof, device: string): Promise<SignedIn> {
     return this.dataSource.transaction(async (manager) => {
       const personId = await spendCode(manager, code, 'verify', this.now());
       const person = await this.livePerson(manager, personId);
+      await this.requireProof(person, proof);
       if (!person.verifiedAt) {
         person.verifiedAt = this.now();
         await manager.save(person);
         await this.recordOwn(manager, person, 'person:verify', { verified: false }, { verified: true });
       }
+      await this.sessions.endAll(manager, personId);
       return { personId, tokens: await this.sessions.open(manager, person, device) };
     });
+  }
+
+  private async requireProof(person: PersonEntity, { registration, password }: RegistrationProof): Promise<void> {
+    if (provesRegistration(this.keys, person, registration)) return;
+    if (password === undefined) throw new AppError('password-needed', text.server.passwordNeeded);
+    if (await opens(person.passwordHash, password)) return;
+    throw new AppError('password-needed', text.server.passwordDiffers);
   }
 
   async signIn({ email, password }: SignIn, device: string): Promise<SignedIn> {

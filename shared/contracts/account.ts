@@ -16,7 +16,11 @@ export type Register = z.infer<typeof RegisterSchema>;
 export const LetterSentSchema = z.object({ email: z.string() });
 export const SignInSchema = z.strictObject({ email: EmailSchema, password: z.string().min(1).max(200) });
 export type SignIn = z.infer<typeof SignInSchema>;
-export const VerifySchema = z.strictObject({ code: z.string().min(20).max(100) });
+/** The password only where the answer asks for it (password-needed): the link was opened in another browser. */
+export const VerifySchema = z.strictObject({
+  code: z.string().min(20).max(100),
+  password: z.string().min(1).max(200).optional(),
+});
 export const ForgotSchema = z.strictObject({ email: EmailSchema });
 export const ResetSchema = z.strictObject({ code: z.string().min(20).max(100), password: PasswordSchema });
 

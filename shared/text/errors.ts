@@ -38,6 +38,7 @@ const titles = {
   'session-ended': 'You are signed out',
   'link-not-open': 'This link is not open',
   'not-verified': 'Your address is not confirmed yet',
+  'password-needed': 'Your password is needed',
   'access-denied': 'Your role does not allow this',
   'cross-site': 'This request came from another page',
   'not-found': 'This is not here',

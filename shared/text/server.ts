@@ -24,6 +24,10 @@ export const server = {
   notSignedIn: 'Sign in to go on.',
   sessionEnded: 'Your session has ended. Sign in again; what you were doing stays on the page.',
   signInFailed: 'E-mail and password do not match. Check both, or set a new password.',
+  passwordNeeded:
+    'The account was made in another browser. Write the password chosen there, so that the address goes to the right account.',
+  passwordDiffers:
+    'This is not the password the account was made with. Write it again, or set a new one by a letter; then nobody else can sign in with the old one.',
   linkNotOpen: 'This link was used already, has ended, or was cut short. Ask for a new one.',
   notVerified:
     'Confirm your e-mail address first: open the link in the letter we sent. Until then you can look, not change.',

@@ -7,12 +7,13 @@ import { makePerson, PASSWORD } from './support/people.js';
 
 const app = await startApp();
 const MINUTE = 60_000;
-const register = (email: string, password = PASSWORD) =>
-  app.client().post('/api/account/register', { email, name: 'Nora', password });
+const register = (email: string, password = PASSWORD, browser = app.client()) =>
+  browser.post('/api/account/register', { email, name: 'Nora', password });
 const codeIn = (letters: { link: string }[]) => letters[0]?.link.split('/').at(-1) ?? '';
 
 it('makes an account with one team, and the letter’s link confirms the address once', async () => {
-  const answer = await register('  Nora@Example.test ');
+  const client = app.client();
+  const answer = await register('  Nora@Example.test ', PASSWORD, client);
   expect(answer.status).toBe(202);
   expect(answer.body).toEqual({ email: 'nora@example.test' });
   const letters = await app.letters();
@@ -20,7 +21,6 @@ it('makes an account with one team, and the letter’s link confirms the address
   expect(letters[0]).toMatchObject({ to: 'nora@example.test', link: expect.stringContaining(`${app.url}/verify/`) });
   expect(letters[0]!.why).toContain('You get this letter because');
 
-  const client = app.client();
   const verified = await client.post<Me>('/api/account/verify', { code: codeIn(letters) });
   expect(verified.status).toBe(200);
   expect(verified.body).toMatchObject({ email: 'nora@example.test', name: 'Nora', verified: true });
@@ -85,11 +85,72 @@ it('lets the newest registration of an unconfirmed address count, and closes wha
   const first = codeIn(await app.letters());
   const stranger = app.client();
   await stranger.post('/api/account/sign-in', { email: 'contested@example.test', password: 'prepared by a stranger' });
-  await register('contested@example.test');
+  const browser = app.client();
+  await register('contested@example.test', PASSWORD, browser);
   const second = codeIn(await app.letters());
   expect((await app.client().post('/api/account/verify', { code: first })).status).toBe(410);
   expect((await stranger.get('/api/me')).status).toBe(401);
-  expect((await app.client().post('/api/account/verify', { code: second })).status).toBe(200);
+  expect((await browser.post('/api/account/verify', { code: second })).status).toBe(200);
+});
+
+it('asks for the password where the link is opened in another browser, and leaves the link open until then', async () => {
+  await register('elsewhere@example.test');
+  const code = codeIn(await app.letters());
+  const phone = app.client();
+  const asked = await phone.post<Problem>('/api/account/verify', { code });
+  expect([asked.status, asked.body.code]).toEqual([403, 'password-needed']);
+  const wrong = await phone.post<Problem>('/api/account/verify', { code, password: 'not this one' });
+  expect([wrong.status, wrong.body.code]).toEqual([403, 'password-needed']);
+  expect(wrong.body.detail).not.toBe(asked.body.detail);
+  expect(phone.cookies.size).toBe(0);
+  const right = await phone.post<Me>('/api/account/verify', { code, password: PASSWORD });
+  expect([right.status, right.body.verified]).toEqual([200, true]);
+  expect((await phone.get('/api/me')).status).toBe(200);
+});
+
+it('does not confirm an address for the stranger who registered it, and a reset takes the account from them', async () => {
+  const email = 'prepared@example.test';
+  const stranger = app.client();
+  await register(email, 'prepared by a stranger', stranger);
+  await stranger.post('/api/account/sign-in', { email, password: 'prepared by a stranger' });
+  const code = codeIn(await app.letters());
+  const owner = app.client();
+  expect((await owner.post('/api/account/verify', { code })).status).toBe(403);
+  expect((await owner.post('/api/account/verify', { code, password: PASSWORD })).status).toBe(403);
+  expect((await stranger.get<Me>('/api/me')).body.verified).toBe(false);
+  await owner.post('/api/account/forgot', { email });
+  const reset = await owner.post<Me>('/api/account/reset', { code: codeIn(await app.letters()), password: PASSWORD });
+  expect([reset.status, reset.body.verified]).toEqual([200, true]);
+  expect((await stranger.get('/api/me')).status).toBe(401);
+  const again = await stranger.post('/api/account/sign-in', { email, password: 'prepared by a stranger' });
+  expect(again.status).toBe(401);
+});
+
+it('takes no proof of an older registration once somebody else has registered the address', async () => {
+  const browser = app.client();
+  await register('overtaken@example.test', PASSWORD, browser);
+  await register('overtaken@example.test', 'prepared by a stranger');
+  const code = codeIn((await app.letters()).reverse());
+  expect((await browser.post('/api/account/verify', { code })).status).toBe(403);
+});
+
+it('ends the sessions that were opened before the address was confirmed, and opens a fresh one', async () => {
+  const browser = app.client();
+  await register('before@example.test', PASSWORD, browser);
+  const earlier = app.client();
+  await earlier.post('/api/account/sign-in', { email: 'before@example.test', password: PASSWORD });
+  expect((await browser.post('/api/account/verify', { code: codeIn(await app.letters()) })).status).toBe(200);
+  expect((await earlier.get('/api/me')).status).toBe(401);
+  expect((await browser.get('/api/me')).status).toBe(200);
+});
+
+it('keeps the proof of a registration out of reach of scripts and of every other path', async () => {
+  const browser = app.client();
+  await register('proof@example.test', PASSWORD, browser);
+  const [proof] = [...browser.cookies.values()];
+  expect(browser.cookies.size).toBe(1);
+  expect(proof!.path).toBe('/api/account/verify');
+  expect(proof!.attributes).toMatch(/HttpOnly.*SameSite=Lax/);
 });
 
 it('signs in and out, and a wrong password opens nothing', async () => {
@@ -175,7 +236,8 @@ it('sends the letter of confirmation again to whoever is signed in and not confi
   await client.post('/api/account/sign-in', { email: 'again@example.test', password: PASSWORD });
   expect((await client.get<Me>('/api/me')).body.verified).toBe(false);
   expect((await client.post('/api/me/verification')).status).toBe(202);
-  expect((await client.post('/api/account/verify', { code: codeIn(await app.letters()) })).status).toBe(200);
+  const verified = await client.post('/api/account/verify', { code: codeIn(await app.letters()), password: PASSWORD });
+  expect(verified.status).toBe(200);
   expect((await client.post('/api/me/verification')).status).toBe(202);
   expect(await app.letters()).toEqual([]); // nothing left to confirm
 });
@@ -206,4 +268,19 @@ it('refuses after too many tries, says for how long, and a right password starts
   const refused = await tryWith(PASSWORD);
   expect([refused.status, refused.body.code]).toEqual([429, 'too-many-tries']);
   expect(Number(refused.headers.get('retry-after'))).toBeGreaterThan(0);
+});
+
+it('lets no place that has used up its own tries lock an address for the others', async () => {
+  const allowances = {
+    'sign-in-pair': { points: 3, duration: 60 },
+    'sign-in-address': { points: 5, duration: 60 },
+  };
+  const limited = await startApp({ allowances, trustProxy: 'loopback' });
+  const { me } = await makePerson(limited, 'Locked');
+  const from = (place: string, password: string) =>
+    limited.client({ 'x-forwarded-for': place }).post<Problem>('/api/account/sign-in', { email: me.email, password });
+  const tries: number[] = [];
+  for (let i = 0; i < 12; i += 1) tries.push((await from('203.0.113.7', 'wrong password')).status);
+  expect(tries).toEqual([401, 401, 401, ...Array(9).fill(429)]);
+  expect((await from('198.51.100.4', PASSWORD)).status).toBe(200);
 });

@@ -15,7 +15,8 @@ export async function signIn(credentials: SignIn): Promise<void> {
   session.signedIn();
 }
 export const register = (input: Register) => api.post('/account/register', input, Anything);
-export const verify = (code: string) => api.post('/account/verify', { code }, Anything);
+export const verify = (code: string, password?: string) =>
+  api.post('/account/verify', { code, ...(password !== undefined && { password }) }, Anything);
 export const askForReset = (email: string) => api.post('/account/forgot', { email }, Anything);
 export const resetPassword = (code: string, password: string) =>
   api.post('/account/reset', { code, password }, Anything);
