@@ -25,7 +25,7 @@ def coil_model(name, omega):
         "inductor+eddy": lambda p: jw * exp(p[4]) + 1 / (1 / (jw * exp(p[5])) + exp(-p[6])),
         "power-law": lambda p: exp(p[4] + p[5] * lg_complex),
         "split-power-law": lambda p: exp(p[4] + p[5] * lg) + 1j * exp(p[6] + p[7] * lg),
-        "semi-inductance": lambda p: jw * exp(p[4]) + 1 / (1 / (jw * exp(p[5])) + 1 / (exp(p[6]) * root) + p[7]),
+        "semi-inductance": lambda p: jw * exp(p[4]) + 1 / (1 / (jw * exp(p[5])) + 1 / (exp(p[6]) * root) + exp(p[7])),
     }[name]
 
 
