@@ -88,7 +88,7 @@ describe('installing the packages of the lock', () => {
   it('passes on what npm said when it fails, and tries again the next time', async () => {
     npm('echo "the registry is not reachable" >&2; exit 1');
     await expect(installPackages(root, quiet)).rejects.toThrow(
-      /npm ci did not succeed[^]*the registry is not reachable/,
+      /npm ci did not succeed[\s\S]*the registry is not reachable/,
     );
     npm('exit 0');
     await installPackages(root, quiet);
