@@ -1,10 +1,11 @@
 import { type Averaged, averaged, type Weighted } from './averaging.js';
 import { type BandResult, type BandResults, NORMAL_FACTOR } from './bands.js';
+import type { Resampled } from './bootstrap.js';
 import { BY_DEFINITION } from './derived-figures.js';
 
 /** A figure as reported. `interval` is there only where value ± 2u would say too little. */
 export interface Estimate extends Averaged {
-  readonly kind: 'fit' | 'definition';
+  readonly kind: 'fit' | 'definition' | 'bootstrap';
   readonly noiseDof: number;
   readonly drift: number; // what the choice of the band costs, already in the uncertainty
 }
@@ -83,4 +84,27 @@ function deviationOf(values: readonly number[]): number {
   if (values.length < 2) return 0;
   const mean = values.reduce((a, b) => a + b, 0) / values.length;
   return Math.sqrt(values.reduce((sum, value) => sum + (value - mean) ** 2, 0) / (values.length - 1));
+}
+
+/**
+ * With the spread over resampled refits in place of the covariance. An interval that already covers more than one
+ * meaning or model of a figure stays, and its uncertainty only grows.
+ */
+export function withResampling(
+  estimates: ReadonlyMap<string, Estimate | null>,
+  resampled: ReadonlyMap<string, Resampled>,
+): Map<string, Estimate | null> {
+  const found = new Map(estimates);
+  for (const [id, { uncertainty, low, high }] of resampled) {
+    const estimate = found.get(id);
+    if (!estimate) continue;
+    const whole = Math.hypot(uncertainty, estimate.spread, estimate.drift);
+    found.set(
+      id,
+      estimate.interval
+        ? { ...estimate, uncertainty: Math.max(whole, estimate.uncertainty) }
+        : { ...estimate, uncertainty: whole, interval: { low, high }, kind: 'bootstrap' },
+    );
+  }
+  return found;
 }

@@ -1,9 +1,10 @@
 import type { Finding, Fit, Marker, Output, Table } from '../../shared/output.js';
 import type { RunContext } from '../kit/calculator.js';
 import { type BandResults, bandResults } from './bands.js';
+import { bootstrapped } from './bootstrap.js';
 import { budgetTable } from './budget-table.js';
 import { modelName } from './candidates.js';
-import { type Estimate, estimatesOf } from './estimates.js';
+import { type Estimate, estimatesOf, isOfResonance, withResampling } from './estimates.js';
 import type { Externals } from './externals.js';
 import { figuresOf } from './figures.js';
 import { fitFindings } from './fit-findings.js';
@@ -30,7 +31,7 @@ export interface Task {
 /** From usable sweeps to the whole answer. */
 export function fittedOutput({ measured, settings, externals, context }: Task, before: readonly Finding[]): Output {
   const results = bandResults(measured, settings, externals, context);
-  const estimates = estimatesOf(results);
+  const estimates = resampledEstimates(results, settings, externals, context);
   const { whole, resonance } = results;
   const [{ propagated }] = resonance.models;
   const findings = [
@@ -52,6 +53,24 @@ export function fittedOutput({ measured, settings, externals, context }: Task, b
     findings,
     tables: tablesOf(results, { estimates, externals, points, steps }),
   };
+}
+
+/** From the covariance, or from resampled refits where the settings ask for them. */
+function resampledEstimates(
+  results: BandResults,
+  { bootstrap }: DriverFitSettings,
+  externals: Externals,
+  context: RunContext,
+): Map<string, Estimate | null> {
+  const estimates = estimatesOf(results);
+  if (bootstrap === 0) return estimates;
+  const job = { refits: bootstrap, externals, context };
+  const { whole, resonance } = results;
+  const ofWhole = bootstrapped(whole, job);
+  const ofResonance = resonance === whole ? ofWhole : bootstrapped(resonance, job);
+  const chosen = new Map([...ofWhole].filter(([id]) => !isOfResonance(id)));
+  for (const [id, found] of ofResonance) if (isOfResonance(id)) chosen.set(id, found);
+  return withResampling(estimates, chosen);
 }
 
 function withMisfit(
