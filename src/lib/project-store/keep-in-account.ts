@@ -30,8 +30,9 @@ export type KeepProgress = (done: number, total: number) => void;
 
 /**
  * Moves everything of `/try` into a project of the account: items, sources byte for byte with every reading, sheets
- * and kept results; then empties the browser's copy. Answers where each sheet went. Whatever fails leaves the
- * browser's copy whole, and the next try goes on where this one ended.
+ * and kept results; then empties the browser's copy. Answers where each sheet went, and which results were left out
+ * because the account's readings of their sweeps give other points. Whatever fails leaves the browser's copy whole, and
+ * the next try goes on where this one ended.
  */
 export async function keepInAccount(local: LocalStore, account: ProjectStore, onProgress: KeepProgress = () => {}) {
   const [items, sweeps, sheets, results] = await Promise.all([
@@ -49,7 +50,8 @@ export async function keepInAccount(local: LocalStore, account: ProjectStore, on
     move: Mover<Row>,
   ) => {
     for (const row of rows) {
-      moved[kind][row.id] ??= await move(row);
+      const id = moved[kind][row.id] ?? (await move(row));
+      if (id !== undefined) moved[kind][row.id] = id;
       note(moved);
       done += 1;
       onProgress(done, total);
@@ -62,36 +64,44 @@ export async function keepInAccount(local: LocalStore, account: ProjectStore, on
   await each(sheets, 'sheets', async ({ name, content }) => {
     return (await account.sheets.add({ name, content: movedContent(content, moved) })).id;
   });
-  await each(results, 'results', async (result) => (await account.results.add(movedResult(result, moved))).id);
+  await each(results, 'results', async (result) => {
+    const asked = movedResult(result, moved);
+    return asked && (await account.results.add(asked)).id;
+  });
   await joinCardsToResults(sheets, account, moved);
   await local.clear();
   localStorage.removeItem(JOURNAL);
-  return { sheets: moved.sheets };
+  const leftOut = results.filter(({ id }) => moved.results[id] === undefined);
+  return { sheets: moved.sheets, leftOut: leftOut.map(({ name, calculatorId }) => ({ name, calculatorId })) };
 }
-type Mover<Row> = (row: Row) => Promise<string>;
+type Mover<Row> = (row: Row) => Promise<string | undefined>;
 
+/**
+ * Points tell whether a reading there is the same as one here: a file that the project has already may have been read
+ * by another rule. It is read again by the rule of here then; what even so gives other points has no revision there.
+ */
 async function moveSweep(sweep: SweepRow, local: LocalStore, account: ProjectStore, moved: Moved): Promise<string> {
   const source = await local.sourceBytes(sweep);
   const readings = (await local.revisions(sweep.id)).sort((a, b) => a.number - b.number);
   const { name, conditions, group, tags, batchId } = sweep;
   const itemId = sweep.itemId === null ? null : (moved.items[sweep.itemId] ?? null);
-  const [first, ...later] = readings;
-  const reading = toldOverrides((first ?? sweep.revision).reading);
+  const reading = toldOverrides((readings[0] ?? sweep.revision).reading);
   const asked = { name, conditions, group, tags, batchId, itemId, reading };
-  let row = await account.addSweep(source, asked).catch((error: unknown) => {
-    const known = alreadyHere(error);
-    if (!known) throw error;
-    return account.sweeps.get(known.sweepId);
+  let known: SweepRevision[] | undefined; // the readings of a file that was there before
+  let row = await account.addSweep(source, asked).catch(async (error: unknown) => {
+    const here = alreadyHere(error);
+    if (!here) throw error;
+    known = await account.revisions(here.sweepId);
+    return account.sweeps.get(here.sweepId);
   });
-  noteRevision(moved, first, row);
-  for (const next of later) {
-    if (row.revision.number < next.number) row = await account.reread(row, toldOverrides(next.reading));
-    noteRevision(moved, next, row);
+  for (const [i, revision] of readings.entries()) {
+    const isSame = ({ pointsSha256 }: SweepRevision) => pointsSha256 === revision.pointsSha256;
+    const before = known?.find(isSame);
+    if (!before && (known || i > 0)) row = await account.reread(row, toldOverrides(revision.reading));
+    const there = before ?? row.revision;
+    if (isSame(there)) moved.revisions[revision.id] = there.id;
   }
   return row.id;
-}
-function noteRevision(moved: Moved, revision: SweepRevision | undefined, row: SweepRow): void {
-  if (revision) moved.revisions[revision.id] = row.revision.id;
 }
 
 const through = (ids: Record<string, string>, id: string) => ids[id] ?? id;
@@ -111,7 +121,9 @@ function movedCard(card: Card, moved: Moved): Card {
   return { ...card, inputs: Object.fromEntries(roles), resultId: null }; // joined again once the results are moved
 }
 
-function movedResult(result: Result, moved: Moved): CreateResult {
+/** Undefined where a reading it was made from has none of the same points in the account: it could not be stored. */
+function movedResult(result: Result, moved: Moved): CreateResult | undefined {
+  if (!result.inputs.every(({ revisionId }) => moved.revisions[revisionId])) return undefined;
   const { name, calculatorId, calculatorVersion, settings, settingsVersion, seed, output } = result;
   return {
     ...{ name, calculatorId, calculatorVersion, settings, settingsVersion, seed, output },

@@ -4,6 +4,9 @@ import { promisifyRequest } from 'idb-keyval';
 export const LOCAL_STORES = ['sweeps', 'revisions', 'points', 'sources', 'sheets', 'results', 'items'] as const;
 export type LocalStoreName = (typeof LOCAL_STORES)[number];
 
+/** Rows to be put, by store and id. */
+export type LocalChange = Partial<Record<LocalStoreName, Readonly<Record<string, unknown>>>>;
+
 const DATABASE = 'hummock-try';
 const VERSION = 1;
 
@@ -20,13 +23,32 @@ export class LocalDatabase {
   }
 
   /** Puts rows of several kinds in one transaction: all of them or none. */
-  async put(rows: Partial<Record<LocalStoreName, Readonly<Record<string, unknown>>>>): Promise<void> {
+  async put(rows: LocalChange): Promise<void> {
     const stores = LOCAL_STORES.filter((store) => rows[store]);
     const transaction = (await this.open()).transaction(stores, 'readwrite');
-    for (const store of stores) {
-      for (const [id, row] of Object.entries(rows[store] ?? {})) transaction.objectStore(store).put(row, id);
-    }
+    putAll(transaction, rows);
     await finished(transaction);
+  }
+
+  /**
+   * Puts what `decide` makes of every row of one kind, in the transaction that read them: no other tab comes between.
+   * `decide` answers at once; what it throws is passed on, and nothing is changed.
+   */
+  async change<Row>(store: LocalStoreName, decide: (rows: Row[]) => LocalChange): Promise<void> {
+    const transaction = (await this.open()).transaction([...LOCAL_STORES], 'readwrite');
+    let refusal: unknown;
+    const request: IDBRequest<Row[]> = transaction.objectStore(store).getAll();
+    request.onsuccess = () => {
+      try {
+        putAll(transaction, decide(request.result));
+      } catch (error) {
+        refusal = error;
+        transaction.abort();
+      }
+    };
+    await finished(transaction).catch((error: unknown) => {
+      throw refusal ?? error;
+    });
   }
 
   async clear(): Promise<void> {
@@ -52,6 +74,12 @@ export class LocalDatabase {
       this.opening = undefined; // a later try may be allowed
     });
     return this.opening;
+  }
+}
+
+function putAll(transaction: IDBTransaction, rows: LocalChange): void {
+  for (const [store, byId] of Object.entries(rows)) {
+    for (const [id, row] of Object.entries(byId)) transaction.objectStore(store).put(row, id);
   }
 }
 

@@ -5,6 +5,7 @@ import { text } from '../../../shared/text.js';
 import type { ReadFile } from '../../workers/messages.js';
 import { readInWorker } from '../../workers/pool.js';
 import { ApiError } from '../api-error.js';
+import { restoredBatch, undoneBatch } from './local-batches.js';
 import type { LocalDatabase } from './local-database.js';
 import { edited, newRow, type Tell } from './local-rows.js';
 import type { AddOptions, ProjectStore, SourceBytes } from './project-store.js';
@@ -50,7 +51,7 @@ function refuseSecond(rows: readonly SweepRow[], sha256: string): void {
 
 async function addSweep(place: Place, source: SourceBytes, given: CreateSweep, options: AddOptions): Promise<SweepRow> {
   const read = options.read ?? (await readHere(source, given.reading, options));
-  refuseSecond(await place.database.all<SweepRow>('sweeps'), read.sourceSha256);
+  const bytes = new Blob([await source.file.arrayBuffer()]); // before the transaction, which waits for nothing else
   if (options.signal?.aborted) throw new ApiError('stopped', text.errors.stoppedDetail);
   const { reading: _told, ...fields } = given;
   const base = newRow();
@@ -58,11 +59,14 @@ async function addSweep(place: Place, source: SourceBytes, given: CreateSweep, o
   const { file, fileName } = source;
   const sourceRow = { id: crypto.randomUUID(), fileName, bytes: file.size, sha256: read.sourceSha256 };
   const row: SweepRow = { ...base, ...fields, projectId: place.projectId, source: sourceRow, revision };
-  await place.database.put({
-    sweeps: { [row.id]: row },
-    revisions: { [revision.id]: revision },
-    points: { [revision.pointsSha256]: encodePoints(read.points) },
-    sources: { [sourceRow.id]: { file: new Blob([await file.arrayBuffer()]), fileName } },
+  await place.database.change<SweepRow>('sweeps', (rows) => {
+    refuseSecond(rows, read.sourceSha256);
+    return {
+      sweeps: { [row.id]: row },
+      revisions: { [revision.id]: revision },
+      points: { [revision.pointsSha256]: encodePoints(read.points) },
+      sources: { [sourceRow.id]: { file: bytes, fileName } },
+    };
   });
   place.tell('sweeps', row.id);
   return row;
@@ -82,10 +86,11 @@ async function reread(place: Place, sweep: SweepRow, reading: ReadingOverrides, 
   return next;
 }
 
-async function markBatch(place: Place, batchId: string, deletedAt: string | null): Promise<void> {
-  const rows = (await place.database.all<SweepRow>('sweeps')).filter((row) => row.batchId === batchId);
-  await place.database.put({ sweeps: Object.fromEntries(rows.map((row) => [row.id, edited(row, { deletedAt })])) });
-  place.tell('sweeps', '');
+async function changeBatch({ database, tell }: Place, change: (rows: SweepRow[]) => SweepRow[]): Promise<void> {
+  await database.change<SweepRow>('sweeps', (rows) => ({
+    sweeps: Object.fromEntries(change(rows).map((row) => [row.id, row])),
+  }));
+  tell('sweeps', '');
 }
 
 type SweepMethods = Pick<
@@ -119,7 +124,7 @@ export function localSweeps(place: Place): SweepMethods {
       return all.filter((revision) => revision.sweepId === sweepId).sort((a, b) => b.number - a.number);
     },
     reread: async (sweep, reading) => reread(place, sweep, reading, await sourceBytes(sweep)),
-    undoBatch: (batchId) => markBatch(place, batchId, new Date().toISOString()),
-    restoreBatch: (batchId) => markBatch(place, batchId, null),
+    undoBatch: (batchId) => changeBatch(place, (rows) => undoneBatch(rows, batchId, new Date().toISOString())),
+    restoreBatch: (batchId) => changeBatch(place, (rows) => restoredBatch(rows, batchId)),
   };
 }
