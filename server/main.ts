@@ -32,7 +32,7 @@ async function start(config: Config, logger: Logger, endings: Ending[]): Promise
   endings.push(() => mailer.close());
 
   let publicUrl = config.publicUrl ?? '';
-  const tasks = makeTasks({ dataSource, mailer, publicUrl: () => publicUrl });
+  const tasks = makeTasks({ dataSource, mailer, logger, publicUrl: () => publicUrl });
   const server = createServer();
   const app = createApp({ ...config, dataSource, logger, jobs: graphileJobs, publicUrl: () => publicUrl });
   server.on('request', app.http);

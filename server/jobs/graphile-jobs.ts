@@ -13,7 +13,7 @@ export const graphileJobs: Jobs = {
 };
 
 /** Every night; a missed night is made up for at the next start. */
-const CRONTAB = '15 3 * * * purge-bin ?fill=1d {}';
+const CRONTAB = '15 3 * * * purge-bin ?fill=1d {}\n45 3 * * * verify-chains ?fill=1d {}';
 
 export function taskListOf(tasks: Tasks): TaskList {
   const entries = (Object.keys(tasks) as TaskName[]).map((name) => {

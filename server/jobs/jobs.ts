@@ -4,6 +4,7 @@ import type { EntityManager } from 'typeorm';
 export interface TaskPayloads {
   'send-letter': { kind: 'verify' | 'register' | 'reset'; email: string };
   'purge-bin': Record<string, never>;
+  'verify-chains': Record<string, never>;
 }
 export type TaskName = keyof TaskPayloads;
 export type Tasks = { readonly [Name in TaskName]: (payload: TaskPayloads[Name]) => Promise<void> };

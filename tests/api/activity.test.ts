@@ -1,6 +1,8 @@
 import pg from 'pg';
+import { pino } from 'pino';
+import type { QueryDeepPartialEntity } from 'typeorm';
 import { expect, it } from 'vitest';
-import { verifyChain } from '../../server/activity/chain.js';
+import { activityHash, verifyChain } from '../../server/activity/chain.js';
 import {
   type AnnouncedEvent,
   PROJECT_EVENT_CHANNEL,
@@ -8,6 +10,7 @@ import {
 } from '../../server/activity/project-events.js';
 import { recordChange } from '../../server/activity/record-change.js';
 import { ActivityEntity } from '../../server/database/entities/activity.entity.js';
+import { verifyChains } from '../../server/jobs/verify-chains.js';
 import type { Activity } from '../../shared/contracts/activity.js';
 import type { Item } from '../../shared/contracts/item.js';
 import type { Page } from '../../shared/contracts/paging.js';
@@ -106,6 +109,50 @@ it('shows a tail that was cut, by the head in the database and by one kept outsi
   expect(await verifyChain(manager, teamId)).toMatchObject({ intact: true, sequence: 5 }); // whoever may write all may forge the head
   const outside = { sequence: kept.sequence, hash: kept.hash };
   expect(await verifyChain(manager, teamId, outside)).toEqual({ intact: false, sequence: 6, reason: 'tail-cut' });
+});
+
+it('shows rows that were forged after the head, with hashes that fit', async () => {
+  const { teamId } = await chainOfSeven();
+  const last = await manager.findOneByOrFail(ActivityEntity, { chainId: teamId, sequence: 7 });
+  const forged = manager.create(ActivityEntity, { ...last, sequence: 8, previousHash: last.hash });
+  forged.hash = activityHash(forged);
+  await manager.insert(ActivityEntity, forged as QueryDeepPartialEntity<ActivityEntity>);
+  const verdict = { intact: false, sequence: 8, reason: 'past-head' };
+  expect(await verifyChain(manager, teamId)).toEqual(verdict);
+  expect(await verifyChain(manager, teamId, { sequence: 7, hash: last.hash })).toEqual(verdict);
+});
+
+it('shows a chain whose rows and head are both gone while its team is there', async () => {
+  const { teamId } = await chainOfSeven();
+  await manager.query('DELETE FROM activity WHERE chain_id = $1', [teamId]);
+  expect(await verifyChain(manager, teamId)).toEqual({ intact: false, sequence: 1, reason: 'tail-cut' });
+  await manager.query('DELETE FROM activity_head WHERE chain_id = $1', [teamId]);
+  expect(await verifyChain(manager, teamId)).toEqual({ intact: false, sequence: 1, reason: 'tail-cut' });
+});
+
+it('verifies every chain by the nightly job and logs those that do not hold, once each', async () => {
+  const other = await startApp();
+  const lines: Record<string, unknown>[] = [];
+  const logger = pino({ level: 'info' }, { write: (line: string) => void lines.push(JSON.parse(line)) });
+  const people = [
+    await makePerson(other, 'Whole'),
+    await makePerson(other, 'Altered'),
+    await makePerson(other, 'Gone'),
+  ];
+  expect(await verifyChains(other.dataSource, logger)).toBe(0);
+  expect(lines.splice(0)).toEqual([expect.objectContaining({ event: 'chains-verified', chains: 6, faults: 0 })]);
+  const [, altered, gone] = people.map(({ teamId }) => teamId);
+  await other.dataSource.query('UPDATE activity SET actor_id = NULL WHERE chain_id = $1', [altered]);
+  await other.dataSource.query('DELETE FROM activity WHERE chain_id = $1', [gone]);
+  await other.dataSource.query('DELETE FROM activity_head WHERE chain_id = $1', [gone]);
+  expect(await verifyChains(other.dataSource, logger)).toBe(2);
+  const faults = lines.filter(({ event }) => event === 'chain-fault');
+  expect(faults.map(({ chainId, reason }) => [chainId, reason]).sort()).toEqual(
+    [
+      [altered, 'altered'],
+      [gone, 'tail-cut'],
+    ].sort(),
+  );
 });
 
 it('keeps one unbroken chain when forty changes of a team come at once', async () => {

@@ -60,7 +60,7 @@ export async function startApp(options: Partial<AppInputs> = {}): Promise<TestAp
 
   const sent: Letter[] = [];
   const mailer: Mailer = { send: async (letter) => void sent.push(letter), close: () => {} };
-  const taskList = taskListOf(makeTasks({ dataSource, mailer, publicUrl: () => url, now }));
+  const taskList = taskListOf(makeTasks({ dataSource, mailer, logger, publicUrl: () => url, now }));
   return {
     url,
     dataSource,
