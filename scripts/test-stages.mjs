@@ -4,7 +4,7 @@ import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync, statSync } fr
 import { join } from 'node:path';
 import { commandPath, installDebianPackages } from './debian.mjs';
 import { startThrowAwayCluster } from './postgres.mjs';
-import { beganAt, SetupError } from './processes.mjs';
+import { beganAt, SetupError, sendSignal } from './processes.mjs';
 import { startServer } from './server-process.mjs';
 import { buildForTests, inTurn, plainEnvironment } from './setup.mjs';
 
@@ -150,6 +150,7 @@ function playwrightCounts(path) {
 }
 
 const LONGEST_STAGE_MS = 20 * 60_000;
+const STOPPED_WITHIN_MS = 15_000;
 const KEPT_REPORTS = 3;
 
 /**
@@ -160,24 +161,37 @@ const KEPT_REPORTS = 3;
  * @returns {Promise<number>}
  */
 function run({ root, open, say }, args, more = {}) {
-  return new Promise((resolve) => {
-    const child = spawn(process.execPath, args, {
-      cwd: root,
-      env: { ...testEnvironment(), ...more },
-      stdio: ['ignore', 'inherit', 'inherit'],
-    });
-    const end = () => child.kill('SIGTERM');
-    const limit = setTimeout(() => {
-      say(`Ended after ${LONGEST_STAGE_MS / 60_000} minutes.`);
-      end();
-    }, LONGEST_STAGE_MS);
-    open.add(end);
-    child.once('close', (code) => {
-      clearTimeout(limit);
-      open.delete(end);
-      resolve(code ?? 1);
-    });
+  const child = spawn(process.execPath, args, {
+    cwd: root,
+    env: { ...testEnvironment(), ...more },
+    stdio: ['ignore', 'inherit', 'inherit'],
+    detached: true, // a group of its own, which is ended as a whole
   });
+  /** @type {Promise<number>} */
+  const closed = new Promise((resolve) => child.once('close', (code) => resolve(code ?? 1)));
+  const end = async () => {
+    signalGroup(child, 'SIGINT'); // what every runner takes as the wish to stop in order
+    const lastResort = setTimeout(() => signalGroup(child, 'SIGKILL'), STOPPED_WITHIN_MS);
+    await closed;
+    clearTimeout(lastResort);
+  };
+  const limit = setTimeout(() => {
+    say(`Ended after ${LONGEST_STAGE_MS / 60_000} minutes.`);
+    void end();
+  }, LONGEST_STAGE_MS);
+  open.add(end);
+  return closed.finally(() => {
+    clearTimeout(limit);
+    open.delete(end);
+  });
+}
+
+/**
+ * @param {import('node:child_process').ChildProcess} child
+ * @param {NodeJS.Signals} signal
+ */
+function signalGroup({ pid }, signal) {
+  if (pid !== undefined) sendSignal(-pid, signal);
 }
 
 /** What the person's shell says about databases, ports and modes must not reach a test. */

@@ -26,7 +26,7 @@ for (const signal of /** @type {const} */ (['SIGINT', 'SIGTERM', 'SIGHUP'])) {
     isEnding = true;
     say('Stopping.');
     endSetupChildren();
-    for (const close of [...open]) await close();
+    for (const close of [...open].reverse()) await close(); // the runner before the server and database that it uses
     process.exit(130);
   });
 }
