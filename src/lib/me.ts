@@ -3,7 +3,7 @@ import { type Me, MeSchema } from '../../shared/contracts/account.js';
 import type { Team } from '../../shared/contracts/team.js';
 import { api } from './api.js';
 import { joinAccountPreferences } from './preferences.js';
-import { sendPreferences } from './send-preferences.js';
+import { sendPreferences, unsentPreferences } from './send-preferences.js';
 import { session } from './session.js';
 
 export const meQuery = queryOptions({
@@ -11,7 +11,9 @@ export const meQuery = queryOptions({
   queryFn: async ({ signal }): Promise<Me> => {
     const me = await api.get('/me', MeSchema, { signal });
     session.signedIn();
-    joinAccountPreferences(me.preferences, sendPreferences);
+    const unsent = unsentPreferences();
+    joinAccountPreferences({ ...me.preferences, ...unsent }, sendPreferences);
+    if (Object.keys(unsent).length > 0) sendPreferences(unsent);
     return me;
   },
   staleTime: 60_000,

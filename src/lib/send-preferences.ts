@@ -1,29 +1,39 @@
-import { MeSchema, type Preferences } from '../../shared/contracts/account.js';
-import { api } from './api.js';
-import { queryClient } from './query-client.js';
+import type { Preferences } from '../../shared/contracts/account.js';
+import { updateMe } from './update-me.js';
 
-let waiting: Partial<Preferences> = {};
+const UNSENT_KEY = 'hummock.preferences.unsent';
 let isSending = false;
 
+/** Changes that the account has not confirmed yet: kept here, so that leaving the page loses none. */
+export function unsentPreferences(): Partial<Preferences> {
+  return JSON.parse(localStorage.getItem(UNSENT_KEY) ?? '{}') as Partial<Preferences>;
+}
+function keepUnsent(changes: Partial<Preferences>): void {
+  if (Object.keys(changes).length === 0) localStorage.removeItem(UNSENT_KEY);
+  else localStorage.setItem(UNSENT_KEY, JSON.stringify(changes));
+}
+function forgetSent(sent: Partial<Preferences>): void {
+  const left = Object.entries(unsentPreferences()).filter(([field, value]) => {
+    return JSON.stringify(value) !== JSON.stringify(sent[field as keyof Preferences]);
+  });
+  keepUnsent(Object.fromEntries(left));
+}
+
 async function sendAll(): Promise<void> {
-  while (Object.keys(waiting).length > 0) {
-    const preferences = waiting;
-    waiting = {};
-    try {
-      const saved = await api.patch('/me', { preferences }, MeSchema, { keepalive: true });
-      queryClient.setQueryData(['me'], saved);
-    } catch {
-      return; // this browser keeps the choice; the account gets it with the next one
-    }
+  for (let preferences = unsentPreferences(); Object.keys(preferences).length > 0; preferences = unsentPreferences()) {
+    await updateMe({ preferences });
+    forgetSent(preferences);
   }
 }
 
-/** Sends a changed preference to the account, one after the other, also when the page is left at once. */
+/** Sends changed preferences to the account, one after the other; what fails goes with the next change or visit. */
 export function sendPreferences(change: Partial<Preferences>): void {
-  waiting = { ...waiting, ...change };
+  keepUnsent({ ...unsentPreferences(), ...change });
   if (isSending) return;
   isSending = true;
-  void sendAll().finally(() => {
-    isSending = false;
-  });
+  void sendAll()
+    .catch(() => {}) // this browser keeps the choice
+    .finally(() => {
+      isSending = false;
+    });
 }

@@ -91,7 +91,10 @@ test('theme, units and spacing hold at once and after a reload, also on another 
   await page.getByLabel('Spacing').selectOption('workshop');
   await expect(page.locator('html')).toHaveAttribute('data-theme', 'dark');
   await expect(page.locator('html')).toHaveAttribute('data-density', 'workshop');
+  await page.getByLabel('Your name').fill('Ines Brookfield');
   const button = page.getByRole('button', { name: 'Save' });
+  await button.click();
+  await expect(page.getByText('Saved.')).toBeVisible();
   await expect(async () => expect((await button.boundingBox())?.height).toBeGreaterThanOrEqual(47.5)).toPass();
   await page.reload();
   await expect(page.locator('html')).toHaveAttribute('data-theme', 'dark');

@@ -1,16 +1,14 @@
 import { zodResolver } from '@hookform/resolvers/zod';
 import { useForm } from 'react-hook-form';
 import { z } from 'zod';
-import { type Me, MeSchema } from '../../../shared/contracts/account.js';
+import type { Me } from '../../../shared/contracts/account.js';
 import { schemaWords } from '../../../shared/schema-words.js';
 import { text } from '../../../shared/text.js';
 import { SubmitButton } from '../../components/button.js';
 import { StatusWord } from '../../components/status-word.js';
 import { TextField } from '../../components/text-field.js';
-import { api } from '../../lib/api.js';
 import { showServerErrors } from '../../lib/form-words.js';
-import { meQuery } from '../../lib/me.js';
-import { queryClient } from '../../lib/query-client.js';
+import { updateMe } from '../../lib/update-me.js';
 
 const NameSchema = z.strictObject({ name: z.string().trim().min(1).max(80) });
 
@@ -18,8 +16,7 @@ export function ProfileForm({ me }: { me: Me }) {
   const form = useForm({ resolver: zodResolver(NameSchema, { error: schemaWords }), defaultValues: { name: me.name } });
   const { errors, isSubmitting, isSubmitSuccessful, isDirty } = form.formState;
   const save = async ({ name }: { name: string }) => {
-    const saved = await api.patch('/me', { name }, MeSchema);
-    queryClient.setQueryData(meQuery.queryKey, saved);
+    const saved = await updateMe({ name });
     form.reset({ name: saved.name }, { keepIsSubmitSuccessful: true });
   };
   const submit = form.handleSubmit((input) => save(input).catch(showServerErrors(form)));

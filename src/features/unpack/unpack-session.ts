@@ -8,6 +8,7 @@ import { KnownFiles } from './known-files.js';
 import { canBeStored, type Entry, lookOf, newEntry, stateAfterReading } from './unpack-entry.js';
 
 const UPLOADS_AT_ONCE = 2;
+const PROGRESS_EVERY_MS = 150;
 
 export interface UnpackState {
   readonly entries: readonly Entry[];
@@ -28,6 +29,7 @@ export class UnpackSession {
   private readonly jobs = new Map<string, Job<ReadOutcome>>();
   private batchId = crypto.randomUUID();
   private stored: SweepRow[] = [];
+  private telling: ReturnType<typeof setTimeout> | undefined;
   private stopStoring: AbortController | undefined;
   private storing: Promise<void> | undefined;
   private readonly known: KnownFiles;
@@ -141,7 +143,7 @@ export class UnpackSession {
     this.change(id, { state: 'storing', share: 0, error: undefined });
     const sweep = { name, conditions, itemId, group: '', tags: [], batchId: this.batchId, reading: overrides };
     const read = outcome && 'file' in outcome ? { read: outcome.file } : {};
-    const onProgress = (share: number) => this.change(id, { share });
+    const onProgress = (share: number) => this.progress(id, share);
     try {
       const row = await this.store.addSweep({ file, fileName: file.name }, sweep, { signal, onProgress, ...read });
       this.stored.push(row);
@@ -172,7 +174,7 @@ export class UnpackSession {
     const { id, file, overrides } = entry;
     const request = { file, fileName: file.name, overrides };
     const job = readInWorker(request, (done, total) => {
-      if (this.jobs.get(id) === job) this.change(id, { share: total > 0 ? done / total : 0 });
+      if (this.jobs.get(id) === job) this.progress(id, total > 0 ? done / total : 0);
     });
     this.jobs.set(id, job);
     job.done
@@ -211,8 +213,19 @@ export class UnpackSession {
   private entry(id: string): Entry | undefined {
     return this.state.entries.find((entry) => entry.id === id);
   }
+  /** Progress of many files comes often: it is kept at once and told together. */
+  private progress(id: string, share: number): void {
+    const entries = this.state.entries.map((entry) => (entry.id === id ? { ...entry, share } : entry));
+    this.state = { ...this.state, entries };
+    this.telling ??= setTimeout(() => this.tellListeners(), PROGRESS_EVERY_MS);
+  }
   private set(change: Partial<UnpackState>): void {
     this.state = { ...this.state, ...change };
+    this.tellListeners();
+  }
+  private tellListeners(): void {
+    clearTimeout(this.telling);
+    this.telling = undefined;
     for (const listener of this.listeners) listener();
   }
 }
