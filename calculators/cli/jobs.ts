@@ -21,17 +21,29 @@ export async function runJobs(name: string, out: Writable): Promise<void> {
     await threadProgram(),
     path === undefined ? undefined : dirname(path),
   );
-  const pending: Promise<string>[] = [];
   const most = AHEAD_PER_WORKER * pool.size;
+  let inHand = 0;
+  let oneLess = () => {};
+  let written = Promise.resolve();
   try {
     let number = 0;
     for await (const line of createInterface({ input: source, crlfDelay: Number.POSITIVE_INFINITY })) {
       number += 1;
       if (line.trim() === '') continue;
-      pending.push(pool.run({ line, number }));
-      if (pending.length >= most) await write(out, await (pending.shift() as Promise<string>));
+      const answer = pool.run({ line, number });
+      inHand += 1;
+      written = written.then(async () => {
+        await write(out, await answer);
+        inHand -= 1;
+        oneLess();
+      });
+      while (inHand >= most) {
+        await new Promise<void>((resolve) => {
+          oneLess = resolve;
+        });
+      }
     }
-    for (const answer of pending) await write(out, await answer);
+    await written;
   } finally {
     await pool.close();
   }

@@ -65,16 +65,19 @@ function refuseBinary(bytes: Uint8Array, fileName: string): void {
 export function isBinary(bytes: Uint8Array): boolean {
   const size = Math.min(bytes.length, LOOKED_AT);
   const isWideMark = (bytes[0] === 0xff && bytes[1] === 0xfe) || (bytes[0] === 0xfe && bytes[1] === 0xff);
-  const counts = { control: 0, evenZeros: 0, oddZeros: 0 };
+  let control = 0;
+  let evenZeros = 0;
+  let oddZeros = 0;
   for (let i = 0; i < size; i += 1) {
     const byte = bytes[i]!;
-    if (byte === 0) counts[i % 2 === 0 ? 'evenZeros' : 'oddZeros'] += 1;
-    else if ((byte < 32 && !(byte >= 9 && byte <= 13) && byte !== 26 && byte !== 27) || byte === 127)
-      counts.control += 1;
+    if (byte >= 32 && byte !== 127) continue;
+    if (byte > 0) control += (byte >= 9 && byte <= 13) || byte === 26 || byte === 27 ? 0 : 1;
+    else if (i % 2 === 0) evenZeros += 1;
+    else oddZeros += 1;
   }
-  const most = Math.max(counts.evenZeros, counts.oddZeros);
-  const isWide = isWideMark || (most > 0.2 * size && Math.min(counts.evenZeros, counts.oddZeros) < 0.05 * most);
-  const strange = counts.control + (isWide ? 0 : counts.evenZeros + counts.oddZeros);
+  const most = Math.max(evenZeros, oddZeros);
+  const isWide = isWideMark || (most > 0.2 * size && Math.min(evenZeros, oddZeros) < 0.05 * most);
+  const strange = control + (isWide ? 0 : evenZeros + oddZeros);
   return strange > 0.01 * size;
 }
 

@@ -4,6 +4,8 @@ const UNITS = new Set(['hz', 'khz', 'mhz', 'ghz']);
 const PARAMETERS = new Set(['s', 'y', 'z', 'g', 'h']);
 const FORMATS = new Set(['ma', 'db', 'ri']);
 const LOOKED_AT = 65_536;
+const HASH = 35;
+const BRACKET = 91;
 
 /**
  * Recognises a Touchstone file by its option line (# Hz S RI R 50) or its [Version] keyword, and refuses it in words.
@@ -11,8 +13,10 @@ const LOOKED_AT = 65_536;
  * Errors: `touchstone-not-one-port` for more than one port, `touchstone-unsupported` for one.
  */
 export function refuseTouchstone(bytes: Uint8Array, fileName: string): void {
+  const head = bytes.subarray(0, LOOKED_AT);
+  if (!head.includes(HASH) && !head.includes(BRACKET)) return; // neither option line nor keyword
   const lines = new TextDecoder('latin1')
-    .decode(bytes.subarray(0, LOOKED_AT))
+    .decode(head)
     .split(/\r\n|\r|\n/)
     .map((line) => line.replace(/!.*/, '').trim())
     .filter((line) => line !== '');

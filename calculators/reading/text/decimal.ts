@@ -6,51 +6,54 @@ let endOfDecimal = -1;
 export const decimalEnd = (): number => endOfDecimal;
 
 const POWERS_OF_TEN = Float64Array.from({ length: 23 }, (_, k) => Number(`1e${k}`)); // 1e22 is the last exact one
-const EXACT = 2 ** 53; // every integer below has its own float64
+const SHORT = 9; // digits that an int32 holds
 
 /**
  * The decimal number that starts at `from`, times 10^shift, correctly rounded: bit-identical to `Number()` of the same
  * digits. `decimalCode`: the code of the decimal mark. Digits, one mark, an exponent after e, E, d or D.
- * Where the digits form an integer below 2^53 and the power of ten is at most 22, one multiplication or division of two exact
- * values rounds once (W. D. Clinger, "How to read floating point numbers accurately", 1990, from memory); anything else goes
- * to `Number()`. `codes` must hold a code that is no digit behind the number.
+ * Up to nine digits before and six behind the mark, or the other way round, form an exact integer; where the power of ten is at
+ * most 22 one multiplication or division of two exact values rounds once (W. D. Clinger, "How to read floating point numbers
+ * accurately", 1990, from memory). Longer ones go to `longDecimal`, and what that is not sure of to `Number()`.
+ * `codes` must hold a code that is no digit behind the number.
  */
 export function scanDecimal(codes: Uint8Array, from: number, decimalCode: number, shift: number): number {
   let p = from;
   let code = codes[p]!;
   const isNegative = code === MINUS;
   if (isNegative || code === PLUS) code = codes[++p]!;
-  let mantissa = 0;
-  const digitsFrom = p;
+  const start = p;
+  let whole = 0;
   while (code >= 48 && code <= 57) {
-    mantissa = mantissa * 10 + (code - 48);
+    whole = (Math.imul(whole, 10) + code - 48) | 0;
     code = codes[++p]!;
   }
-  let digits = p - digitsFrom;
-  let exponent = shift;
+  const wholeDigits = p - start;
+  let fraction = 0;
+  let places = 0;
   if (code === decimalCode) {
-    const fractionFrom = p + 1;
     code = codes[++p]!;
+    const fractionStart = p;
     while (code >= 48 && code <= 57) {
-      mantissa = mantissa * 10 + (code - 48);
+      fraction = (Math.imul(fraction, 10) + code - 48) | 0;
       code = codes[++p]!;
     }
-    exponent -= p - fractionFrom;
-    digits += p - fractionFrom;
+    places = p - fractionStart;
   }
-  if (digits === 0) {
+  if (wholeDigits + places === 0) {
     endOfDecimal = -1;
     return Number.NaN;
   }
   endOfDecimal = p;
+  let exponent = shift - places;
   const letter = code | 32; // e, E, d, D
   if (letter === 101 || letter === 100) exponent += scanExponent(codes, p + 1);
   let value: number;
-  if (mantissa < EXACT && exponent >= -22 && exponent <= 22) {
+  if (wholeDigits <= SHORT && places <= SHORT && wholeDigits + places <= 15 && exponent >= -22 && exponent <= 22) {
+    const mantissa = whole * POWERS_OF_TEN[places]! + fraction;
     value = exponent < 0 ? mantissa / POWERS_OF_TEN[-exponent]! : mantissa * POWERS_OF_TEN[exponent]!;
   } else {
-    value = longDecimal(codes, digitsFrom, p, decimalCode, exponent);
-    if (Number.isNaN(value)) value = carefully(codes, digitsFrom, p, decimalCode, exponent);
+    value = longDecimal(codes, start, p, decimalCode, exponent);
+    if (Number.isNaN(value)) value = carefully(codes, start, p, decimalCode, exponent);
   }
   return isNegative ? -value : value;
 }

@@ -12,27 +12,41 @@ export type Encoding = (typeof ENCODINGS)[number];
 export interface Characters {
   readonly codes: Uint8Array;
   readonly encoding: Encoding;
-  readonly isAscii: boolean;
+  readonly isAssumed: boolean; // plain as far as was looked; whoever meets a code above 127 throws BeyondAscii
   readonly reason: EncodingReason;
   decode(from: number, to: number): string;
 }
+/** A text that looked plain at its start is not: it has to be read again, looking at all of it. */
+export class BeyondAscii extends Error {
+  override readonly name = 'BeyondAscii';
+}
+
+/** Throws BeyondAscii where codes [from, to) hold one above 127. */
+export function refuseHighCodes(codes: Uint8Array, from: number, to: number): void {
+  for (let p = from; p < to; p += 1) if (codes[p]! > 127) throw new BeyondAscii();
+}
+
 export type EncodingReason = 'byte-order-mark' | 'plain' | 'valid-utf-8' | 'zero-bytes' | 'not-utf-8' | 'told';
 
 const UTF8_BOM = [0xef, 0xbb, 0xbf];
 const startsWith = (bytes: Uint8Array, mark: readonly number[]) => mark.every((byte, i) => bytes[i] === byte);
 
 /** Finds the encoding by byte order mark, then by its zero bytes, then by whether it is sound UTF-8. */
-export function readCharacters(bytes: Uint8Array, told: Encoding | undefined, checkpoint: () => void): Characters {
+export function readCharacters(
+  bytes: Uint8Array,
+  told: Encoding | undefined,
+  checkpoint: () => void,
+  looksAtAll = false, // at every byte for characters beyond ASCII, not only at the first 64 kB
+): Characters {
   if (told) return toldCharacters(bytes, told, checkpoint);
   if (startsWith(bytes, UTF8_BOM)) {
-    return byteCharacters(bytes.subarray(3), 'byte-order-mark', undefined, checkpoint);
+    return byteCharacters(bytes.subarray(3), { reason: 'byte-order-mark', looksAtAll }, checkpoint);
   }
   if (startsWith(bytes, [0xff, 0xfe])) return wideCharacters(bytes, 2, 'utf-16le', 'byte-order-mark', checkpoint);
   if (startsWith(bytes, [0xfe, 0xff])) return wideCharacters(bytes, 2, 'utf-16be', 'byte-order-mark', checkpoint);
   const wide = wideByZeros(bytes);
-  return wide
-    ? wideCharacters(bytes, 0, wide, 'zero-bytes', checkpoint)
-    : byteCharacters(bytes, 'plain', undefined, checkpoint);
+  if (wide) return wideCharacters(bytes, 0, wide, 'zero-bytes', checkpoint);
+  return byteCharacters(bytes, { reason: 'plain', looksAtAll }, checkpoint);
 }
 
 function toldCharacters(bytes: Uint8Array, told: Encoding, checkpoint: () => void): Characters {
@@ -48,7 +62,7 @@ function toldCharacters(bytes: Uint8Array, told: Encoding, checkpoint: () => voi
     return wideCharacters(bytes, hasMark ? 2 : 0, told, 'told', checkpoint);
   }
   const skip = startsWith(bytes, UTF8_BOM) ? 3 : 0;
-  return byteCharacters(bytes.subarray(skip), 'told', told, checkpoint);
+  return byteCharacters(bytes.subarray(skip), { reason: 'told', told, looksAtAll: true }, checkpoint);
 }
 
 /** UTF-16 of mostly ASCII characters has a zero in every second byte. Looks at the first 4 kB. */
@@ -67,35 +81,37 @@ function wideByZeros(bytes: Uint8Array): 'utf-16le' | 'utf-16be' | undefined {
 }
 
 const STRIDE = 1 << 20;
+const HEAD = 1 << 16;
 
-function byteCharacters(
-  bytes: Uint8Array,
-  reason: EncodingReason,
-  told: 'utf-8' | 'latin1' | undefined,
-  checkpoint: () => void,
-): Characters {
-  const isAscii = allAscii(bytes, checkpoint);
+interface ByteText {
+  readonly reason: EncodingReason;
+  readonly told?: 'utf-8' | 'latin1';
+  readonly looksAtAll: boolean;
+}
+
+function byteCharacters(bytes: Uint8Array, { reason, told, looksAtAll }: ByteText, checkpoint: () => void): Characters {
+  const isAscii = allAscii(looksAtAll ? bytes : bytes.subarray(0, HEAD), checkpoint);
   const isUtf8 = told ? told === 'utf-8' : isAscii || isSoundUtf8(bytes, checkpoint);
   const encoding = isUtf8 ? 'utf-8' : 'latin1';
   const decoder = new TextDecoder(encoding, { ignoreBOM: true });
   const found: EncodingReason = reason !== 'plain' || isAscii ? reason : isUtf8 ? 'valid-utf-8' : 'not-utf-8';
   const codes = isAscii ? bytes : isUtf8 ? plainUtf8(bytes, checkpoint) : plainLatin1(bytes);
-  return { codes, encoding, isAscii, reason: found, decode: (from, to) => decoder.decode(bytes.subarray(from, to)) };
+  const isAssumed = isAscii && !looksAtAll;
+  return { codes, encoding, isAssumed, reason: found, decode: (from, to) => decoder.decode(bytes.subarray(from, to)) };
 }
 
 function allAscii(bytes: Uint8Array, checkpoint: () => void): boolean {
-  const isHigh = (byte: number) => byte > 127;
-  if (bytes.length < 8) return !bytes.some(isHigh);
-  const lead = (4 - (bytes.byteOffset & 3)) & 3;
-  const words = new Uint32Array(bytes.buffer, bytes.byteOffset + lead, (bytes.length - lead) >> 2);
-  for (let i = 0; i < words.length; i += STRIDE) {
-    let seen = 0;
-    const to = Math.min(words.length, i + STRIDE);
-    for (let k = i; k < to; k += 1) seen |= words[k]!;
-    if (seen & 0x80808080) return false;
+  for (let from = 0; from < bytes.length; from += STRIDE) {
+    if (seenBits(bytes.subarray(from, from + STRIDE)) > 127) return false;
     checkpoint();
   }
-  return !bytes.subarray(0, lead).some(isHigh) && !bytes.subarray(lead + 4 * words.length).some(isHigh);
+  return true;
+}
+
+function seenBits(bytes: Uint8Array): number {
+  let seen = 0;
+  for (let i = 0; i < bytes.length; i += 1) seen |= bytes[i]!;
+  return seen;
 }
 
 function isSoundUtf8(bytes: Uint8Array, checkpoint: () => void): boolean {
@@ -144,17 +160,15 @@ function wideCharacters(
   const size = (bytes.length - skip) >> 1;
   const low = encoding === 'utf-16le' ? 0 : 1;
   const codes = new Uint8Array(size);
-  let isAscii = true;
   for (let i = 0; i < size; i += 1) {
     if ((i & (STRIDE - 1)) === 0) checkpoint();
     const at = skip + 2 * i;
     const unit = bytes[at + low]! | (bytes[at + 1 - low]! << 8);
     codes[i] = unit < 128 ? unit : plainUnit(unit);
-    if (unit > 127) isAscii = false;
   }
   const decoder = new TextDecoder(encoding, { ignoreBOM: true });
   const decode = (from: number, to: number) => decoder.decode(bytes.subarray(skip + 2 * from, skip + 2 * to));
-  return { codes, encoding, isAscii, reason, decode };
+  return { codes, encoding, isAssumed: false, reason, decode };
 }
 
 /** The characters of a string, one position a UTF-16 unit: for a line that is shown already. */
@@ -164,7 +178,7 @@ export function charactersOf(line: string): Characters {
     const unit = line.charCodeAt(i);
     codes[i] = unit < 128 ? unit : plainUnit(unit);
   }
-  return { codes, encoding: 'utf-8', isAscii: false, reason: 'told', decode: (from, to) => line.slice(from, to) };
+  return { codes, encoding: 'utf-8', isAssumed: false, reason: 'told', decode: (from, to) => line.slice(from, to) };
 }
 
 function plainUnit(unit: number): number {

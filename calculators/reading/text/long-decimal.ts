@@ -44,8 +44,8 @@ export function longDecimal(
     else second = second * 10 + (code - 48);
     digits += 1;
   }
-  const behind = digits - DIGITS_A_PART;
-  if (behind < 0 || behind > DIGITS_A_PART || exponent < -LARGEST || exponent > LARGEST) return Number.NaN;
+  const behind = Math.max(0, digits - DIGITS_A_PART);
+  if (behind > DIGITS_A_PART || exponent < -LARGEST || exponent > LARGEST) return Number.NaN;
   const shift = HIGH[LARGEST + behind]!; // exact: at most 1e15
   const product = first * shift;
   const productRest = restOfProduct(first, shift, product);

@@ -2,7 +2,8 @@ import type { Guess, Reading, ReadingOverrides } from '../../../shared/contracts
 import { InputError } from '../../../shared/errors.js';
 import type { Finding } from '../../../shared/output.js';
 import { readingText as words } from '../../../shared/text/reading.js';
-import { readCharacters } from './encoding.js';
+import { BeyondAscii, type Characters, readCharacters } from './encoding.js';
+import type { DialectGuess } from './recognise/guess-dialect.js';
 import { told } from './recognise/guess-units.js';
 import { phaseMisfit } from './recognise/minimum-phase.js';
 import { guessesOf, type Recognised, recognise } from './recognise/recognise.js';
@@ -11,7 +12,8 @@ import { hasInk } from './recognise/sample.js';
 import { attachedUnit } from './recognise/sample-curve.js';
 import { type Points, toPoints } from './rows/curve.js';
 import { finding } from './rows/findings.js';
-import { type ScanPlan, scanRows, type Table, type TakenColumn, type Watch } from './rows/scan-rows.js';
+import { type ScanPlan, scanRows, type TakenColumn } from './rows/scan-rows.js';
+import type { Table, Watch } from './rows/table.js';
 import { thin } from './rows/thin.js';
 
 export interface TextReading {
@@ -23,7 +25,19 @@ export interface TextReading {
 
 /** Reads a table of impedance from text: recognise, scan, clean, sort, average, thin. */
 export function readText(bytes: Uint8Array, fileName: string, overrides: ReadingOverrides, watch: Watch): TextReading {
-  const text = readCharacters(bytes, overrides.encoding, watch.checkpoint);
+  const read = (looksAtAll: boolean) => {
+    const text = readCharacters(bytes, overrides.encoding, watch.checkpoint, looksAtAll);
+    return readFrom(text, fileName, overrides, watch);
+  };
+  try {
+    return read(false);
+  } catch (error) {
+    if (error instanceof BeyondAscii) return read(true);
+    throw error;
+  }
+}
+
+function readFrom(text: Characters, fileName: string, overrides: ReadingOverrides, watch: Watch): TextReading {
   if (!hasInk(text.codes, 0, text.codes.length)) {
     throw new InputError('empty-file', 'This file holds no characters but blanks. Export the sweep again.', fileName);
   }
@@ -65,7 +79,16 @@ function planOf(found: Recognised, isPair: boolean): ScanPlan {
   const decimals = new Set(guess.rows.slice(0, -1).map((row) => row.at(-1)?.decimals ?? 0)); // but the last: it may be cut off
   const fixedDecimals = guess.rows.length >= 8 && decimals.size === 1 ? ([...decimals][0] ?? 0) : 0;
   const { dataStart, headerLines } = layout;
-  return { dialect: guess.dialect, shape: guess.shape, take, dataStart, firstLine: headerLines + 1, fixedDecimals };
+  const rowsExpected = Math.ceil((1.02 * (found.text.codes.length - dataStart)) / lengthOf(guess.rows)) + 16;
+  const { dialect, shape } = guess;
+  return { dialect, shape, take, dataStart, firstLine: headerLines + 1, fixedDecimals, rowsExpected };
+}
+
+/** Characters of a row, line end included: the mean of the later half of the sample. */
+function lengthOf(rows: DialectGuess['rows']): number {
+  const later = rows.slice(rows.length >> 1);
+  const sum = later.reduce((total, row) => total + (row.at(-1)?.end ?? 0) - (row[0]?.start ?? 0) + 1, 0);
+  return Math.max(2, sum / later.length);
 }
 
 function refuseTable(table: Table, fileName: string): void {

@@ -27,8 +27,9 @@ export function guessDialect(
   lines: readonly Line[],
   told: ReadingOverrides,
 ): DialectGuess | undefined {
-  const tried = candidates(text, lines, told).map((dialect) => tally(text, lines, dialect));
-  const fitting = tried.filter((guess) => guess.agreeing > 0).sort(better);
+  const fitting = tryAll(text, lines, told)
+    .filter((guess) => guess.agreeing > 0)
+    .sort(better);
   const best = fitting[0];
   if (!best) return undefined;
   const rival = fitting.find(
@@ -40,6 +41,18 @@ export function guessDialect(
       !sameNumbers(best, other),
   );
   return { ...best, rival: rival?.dialect };
+}
+
+/** A separator that makes numbers of all of nearly every line leaves nothing for the later ones to explain. */
+function tryAll(text: Characters, lines: readonly Line[], told: ReadingOverrides): DialectGuess[] {
+  const tried: DialectGuess[] = [];
+  const explainsAll = (guess: DialectGuess) =>
+    columnsOf(guess) >= 2 && wordsOf(guess) === 0 && guess.agreeing >= 0.95 * guess.lines;
+  for (const dialect of candidates(text, lines, told)) {
+    if (tried.some((guess) => guess.dialect.separator !== dialect.separator && explainsAll(guess))) break;
+    tried.push(tally(text, lines, dialect));
+  }
+  return tried;
 }
 
 function candidates(text: Characters, lines: readonly Line[], told: ReadingOverrides): Dialect[] {

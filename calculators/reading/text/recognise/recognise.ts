@@ -1,7 +1,7 @@
 import type { Guess, Reading, ReadingOverrides } from '../../../../shared/contracts/reading.js';
 import { readingText as words } from '../../../../shared/text/reading.js';
 import { QUOTE } from '../characters.js';
-import type { Characters } from '../encoding.js';
+import { type Characters, refuseHighCodes } from '../encoding.js';
 import { type ColumnsGuess, guessColumns } from './guess-columns.js';
 import { type DialectGuess, guessDialect } from './guess-dialect.js';
 import { guessUnits, told, type UnitsGuess } from './guess-units.js';
@@ -23,6 +23,7 @@ export interface Recognised {
 export function recognise(text: Characters, overrides: ReadingOverrides, fileName: string): Recognised {
   refuseClash(overrides, text.codes.includes(QUOTE));
   const lines = sampleLines(text.codes);
+  if (text.isAssumed) for (const { start, end } of lines) refuseHighCodes(text.codes, start, end);
   const guess = guessDialect(text, lines, overrides);
   if (!guess || numbersIn(guess.shape) < 2) {
     const isFree = !overrides.separator && !overrides.decimalMark && !overrides.thousandsMark;

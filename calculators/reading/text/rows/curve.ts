@@ -2,15 +2,14 @@ import type { Reading } from '../../../../shared/contracts/reading.js';
 import { InputError } from '../../../../shared/errors.js';
 import type { Finding } from '../../../../shared/output.js';
 import { finding } from './findings.js';
-import type { Table, Watch } from './scan-rows.js';
 import { sortByFrequency } from './sort.js';
+import { lineOf, skipRow, type Table, type Watch } from './table.js';
 
 /** Points on their way to a sweep. Shapes: (n). `first` and `second`: |Z| in ohm and phase in radians, or Re and Im in ohm. */
 export interface Points {
   frequency: Float64Array;
   first: Float64Array;
   second?: Float64Array | undefined;
-  lines: Uint32Array;
 }
 export interface PointsKind {
   readonly isPair: boolean; // real and imaginary
@@ -24,7 +23,7 @@ export const POINTS_LEAST = 8;
 
 /** From the table as written to points in Hz, ohm and radians, ascending, each frequency once. */
 export function toPoints(table: Table, kind: PointsKind, fileName: string, findings: Finding[], watch: Watch): Points {
-  const points = cleaned(table, kind, fileName, findings);
+  const points = cleaned(table, kind, fileName, findings, watch);
   watch.checkpoint();
   sortByFrequency(points, findings, watch);
   averageDuplicates(points, kind.isPair, findings);
@@ -46,59 +45,63 @@ export function toPoints(table: Table, kind: PointsKind, fileName: string, findi
   return points;
 }
 
-/** Applies the units, drops 0 Hz and what is not finite, and refuses what no impedance can be. */
-function cleaned(table: Table, kind: PointsKind, fileName: string, findings: Finding[]): Points {
-  const { rows, lines } = table;
-  const [frequency, first, second] = table.values.map((values) => values.subarray(0, rows)) as [
-    Float64Array,
-    Float64Array,
-    Float64Array | undefined,
-  ];
-  const perHz = kind.frequencyUnit === 'rad/s' ? 2 * Math.PI : 1;
-  const perRadian = kind.phaseUnit === 'radian' ? 1 : 180 / Math.PI;
-  const sign = kind.isTurned ? -1 : 1;
+const LARGEST = 1e100; // no impedance comes near; its square is still finite
+const ROWS_A_LOOK = 1 << 18;
+
+/** Applies the units, drops 0 Hz and what is too large, and refuses what no impedance can be. */
+function cleaned(table: Table, kind: PointsKind, fileName: string, findings: Finding[], watch: Watch): Points {
+  const [frequency, first, second] = table.values as [Float64Array, Float64Array, Float64Array | undefined];
+  const { isPair } = kind;
   let kept = 0;
   let dc = 0;
-  for (let i = 0; i < rows; i += 1) {
-    const f = perHz === 1 ? frequency[i]! : frequency[i]! / perHz;
-    const a = kind.magnitudeUnit === 'dB' ? 10 ** (first[i]! / 20) : first[i]!;
-    const b = second ? (kind.isPair ? sign * second[i]! : (sign * second[i]!) / perRadian) : 0;
-    const line = lines[i]!;
-    if (!Number.isFinite(f + a + b)) {
-      if (table.skipped.length < 200) table.skipped.push({ line, reason: 'holds a number too large to use' });
-      table.skippedCount += 1;
-      continue;
+  for (let from = 0; from < table.rows; from += ROWS_A_LOOK) {
+    const to = Math.min(table.rows, from + ROWS_A_LOOK);
+    applyUnits(table.values, kind, from, to);
+    for (let i = from; i < to; i += 1) {
+      const f = frequency[i]!;
+      const a = first[i]!;
+      const b = second ? second[i]! : 0;
+      if (!(Math.abs(f) < LARGEST && Math.abs(a) < LARGEST && Math.abs(b) < LARGEST)) {
+        skipRow(table, lineOf(table, i), 'holds a number too large to use');
+      } else if (f > 0) {
+        if (isPair ? a * a + b * b === 0 : a <= 0) throw noImpedance(a, lineOf(table, i), fileName);
+        frequency[kept] = f;
+        first[kept] = a;
+        if (second) second[kept] = b;
+        kept += 1;
+      } else if (f === 0) dc += 1;
+      else throw belowZero(f, lineOf(table, i), fileName);
     }
-    if (f < 0)
-      throw new InputError(
-        'negative-frequency',
-        `Line ${line}: the frequency is ${f} Hz. Frequencies count upwards from zero; check which column is the frequency.`,
-        where(fileName, line),
-      );
-    if (f === 0) {
-      dc += 1;
-      continue;
-    }
-    if (kind.isPair ? a === 0 && b === 0 : a <= 0) throw noImpedance(a, line, fileName);
-    frequency[kept] = f;
-    first[kept] = a;
-    if (second) second[kept] = b;
-    lines[kept++] = line;
+    watch.checkpoint();
   }
-  if (dc > 0)
-    findings.push(
-      finding(
-        'dc-point',
-        `${dc === 1 ? 'A row' : `${dc} rows`} at 0 Hz ${dc === 1 ? 'was' : 'were'} left out: a sweep has no point at zero frequency.`,
-        { rows: dc },
-      ),
-    );
-  return {
-    frequency: frequency.subarray(0, kept),
-    first: first.subarray(0, kept),
-    second: second?.subarray(0, kept),
-    lines: lines.subarray(0, kept),
-  };
+  if (dc > 0) {
+    const what = dc === 1 ? 'A row at 0 Hz was' : `${dc} rows at 0 Hz were`;
+    findings.push(finding('dc-point', `${what} left out: a sweep has no point at zero frequency.`, { rows: dc }));
+  }
+  const [frequencies, firsts, seconds] = [frequency, first, second].map((values) => values?.subarray(0, kept));
+  return { frequency: frequencies as Float64Array, first: firsts as Float64Array, second: seconds };
+}
+
+/** To Hz, ohm and radians where the file has others; the powers of ten of kHz and kilohm were applied while reading. */
+function applyUnits(values: readonly Float64Array[], kind: PointsKind, from: number, to: number): void {
+  const [frequency, first, second] = values.map((column) => column.subarray(from, to));
+  if (kind.frequencyUnit === 'rad/s') divide(frequency, 2 * Math.PI);
+  if (kind.magnitudeUnit === 'dB')
+    first?.forEach((level, i) => {
+      first[i] = 10 ** (level / 20);
+    });
+  const sign = kind.isTurned ? -1 : 1;
+  if (!kind.isPair && kind.phaseUnit === 'degree') divide(second, (sign * 180) / Math.PI);
+  else if (kind.isTurned) divide(second, -1);
+}
+
+function divide(values: Float64Array | undefined, by: number): void {
+  if (values) for (let i = 0; i < values.length; i += 1) values[i] = values[i]! / by;
+}
+
+function belowZero(f: number, line: number, fileName: string): InputError {
+  const message = `Line ${line}: the frequency is ${f} Hz. Frequencies count upwards from zero; check which column is the frequency.`;
+  return new InputError('negative-frequency', message, where(fileName, line));
 }
 
 function noImpedance(value: number, line: number, fileName: string): InputError {
@@ -118,38 +121,29 @@ export const where = (fileName: string, line: number): string =>
  * Common practice, no published source. The mean magnitude never leaves the range of its readings.
  */
 function averageDuplicates(points: Points, isPair: boolean, findings: Finding[]): void {
-  const { frequency, first, second, lines } = points;
-  let kept = 0;
+  const { frequency, first, second } = points;
+  let kept = 1;
+  while (kept < frequency.length && frequency[kept] !== frequency[kept - 1]) kept += 1; // none so far
+  if (kept >= frequency.length) return;
+  kept -= 1;
   let doubled = 0;
-  for (let i = 0; i < frequency.length; ) {
+  for (let i = kept; i < frequency.length; ) {
     let end = i + 1;
     while (end < frequency.length && frequency[end] === frequency[i]) end += 1;
     frequency[kept] = frequency[i]!;
-    lines[kept] = lines[i]!;
-    if (end - i === 1 || isPair || !second) {
-      first[kept] = mean(first, i, end);
-      if (second) second[kept] = mean(second, i, end);
-    } else {
-      const phase = meanDirection(first, second, i, end);
-      first[kept] = mean(first, i, end);
-      second[kept] = phase;
-    }
+    const other = second && (isPair || end - i === 1 ? mean(second, i, end) : meanDirection(first, second, i, end));
+    first[kept] = mean(first, i, end);
+    if (second) second[kept] = other as number;
     if (end - i > 1) doubled += 1;
     kept += 1;
     i = end;
   }
-  if (doubled === 0) return;
   points.frequency = frequency.subarray(0, kept);
   points.first = first.subarray(0, kept);
   points.second = second?.subarray(0, kept);
-  points.lines = lines.subarray(0, kept);
-  findings.push(
-    finding(
-      'duplicate-frequency',
-      `${doubled} ${doubled === 1 ? 'frequency occurs' : 'frequencies occur'} more than once; the readings were averaged.`,
-      { frequencies: doubled },
-    ),
-  );
+  const what = doubled === 1 ? 'frequency occurs' : 'frequencies occur';
+  const message = `${doubled} ${what} more than once; the readings were averaged.`;
+  findings.push(finding('duplicate-frequency', message, { frequencies: doubled }));
 }
 
 function mean(values: Float64Array, from: number, to: number): number {

@@ -3,7 +3,9 @@ import { decimalEnd, scanDecimal } from '../decimal.js';
 import { DECIMAL_CODE, type Dialect, SEPARATOR_CODE } from '../dialect.js';
 import type { Characters } from '../encoding.js';
 import type { Shape } from '../recognise/guess-dialect.js';
+import { type PlainFormat, plainRow } from './plain-row.js';
 import { slowRow } from './slow-row.js';
+import { emptyTable, makeRoom, startRun, type Table, type Watch } from './table.js';
 
 /** A column to take: where it stands in the row, and the power of ten its unit adds (kHz: 3). */
 export interface TakenColumn {
@@ -14,82 +16,39 @@ export interface TakenColumn {
 export interface ScanPlan {
   readonly dialect: Dialect;
   readonly shape: Shape;
-  readonly take: readonly TakenColumn[]; // in the order of the columns
+  readonly take: readonly TakenColumn[]; // frequency first, then what makes up the impedance
   readonly dataStart: number;
   readonly fixedDecimals: number; // digits after the mark of the last column, where all rows have as many; else 0
   readonly firstLine: number; // number of the first row's line, counted from 1
-}
-export interface SkippedRow {
-  readonly line: number;
-  readonly reason: string;
+  readonly rowsExpected: number;
 }
 
-/** The rows taken. Shapes: each of `values` and `lines` (rows). */
-export interface Table {
-  rows: number;
-  values: Float64Array[]; // one for each taken column
-  lines: Uint32Array; // where each row stands in the file
-  skipped: SkippedRow[]; // the first 200
-  skippedCount: number;
-  comments: string[];
-  textLines: number; // lines of words among the data
-  truncatedLine: number; // the last line, where it was cut off; 0 otherwise
-  secondTableLine: number; // where a second table starts, which is not read; 0 otherwise
-}
-
-export interface Watch {
-  progress(done: number, total: number): void;
-  checkpoint(): void;
-}
-
-const STRIDE = 1 << 19; // characters between two looks at the clock: about 10 ms of work
+const STRIDE_LEAST = 1 << 12; // characters between two looks at the clock at first: the engine sees whole rounds before it compiles
+const STRIDE_MOST = 1 << 19; // later: some milliseconds of work
+const MISSES_MOST = 100; // rows that were not plain before the plain way is given up
+const BEHIND = 8; // codes that the quick ways may look at behind a number
 
 /** Reads every row below the headings. Rows that are not plain numbers and separators take the slow way, one line at a time. */
 export function scanRows(text: Characters, plan: ScanPlan, watch: Watch): Table {
-  const table = emptyTable(text.codes.length - plan.dataStart, plan.take.length);
+  const table = emptyTable(plan.rowsExpected, plan.take.length);
   const scan = new RowScan(text, plan, table);
   const total = text.codes.length;
+  let stride = STRIDE_LEAST;
   while (scan.position < total && table.secondTableLine === 0) {
-    scan.upTo(Math.min(total, scan.position + STRIDE));
+    scan.upTo(Math.min(total, scan.position + stride));
+    stride = Math.min(STRIDE_MOST, 1.25 * stride);
     watch.checkpoint();
     watch.progress(scan.position, total);
   }
   return table;
 }
 
-function emptyTable(characters: number, columns: number): Table {
-  const room = Math.max(16, Math.ceil(characters / 24));
-  return {
-    rows: 0,
-    values: Array.from({ length: columns }, () => new Float64Array(room)),
-    lines: new Uint32Array(room),
-    skipped: [],
-    skippedCount: 0,
-    comments: [],
-    textLines: 0,
-    truncatedLine: 0,
-    secondTableLine: 0,
-  };
-}
-
-/** Doubles the room of a table that is full. */
-export function makeRoom(table: Table): void {
-  if (table.rows < table.lines.length) return;
-  const room = 2 * table.lines.length;
-  table.values = table.values.map((old) => {
-    const grown = new Float64Array(room);
-    grown.set(old);
-    return grown;
-  });
-  const lines = new Uint32Array(room);
-  lines.set(table.lines);
-  table.lines = lines;
-}
-
 class RowScan {
   position: number;
   private line: number;
-  private readonly fastEnd: number; // behind the last line end: the line after it may be cut off
+  private readonly view: DataView;
+  private format: PlainFormat | undefined;
+  private readonly fastEnd: number; // where the last rows start that may be cut off or lie too near the end
   private readonly slot: Int32Array; // for each column of the row: which taken one it is, or -1
   private readonly shifts: Int32Array;
   private readonly last: number; // the last column that is needed
@@ -97,6 +56,7 @@ class RowScan {
   private readonly separator: number;
   private readonly decimalCode: number;
   private readonly isFast: boolean;
+  private missesLeft: number;
 
   constructor(
     private readonly text: Characters,
@@ -104,20 +64,24 @@ class RowScan {
     private readonly table: Table,
   ) {
     const { codes } = text;
+    const { take, shape, dialect } = plan;
     this.position = plan.dataStart;
     this.line = plan.firstLine;
-    this.fastEnd = Math.max(codes.lastIndexOf(LF), codes.lastIndexOf(CR)) + 1;
-    this.slot = new Int32Array(plan.shape.fields).fill(-1);
-    plan.take.forEach(({ column }, i) => {
+    this.view = new DataView(codes.buffer, codes.byteOffset, codes.byteLength);
+    const near = Math.max(0, codes.length - BEHIND);
+    this.fastEnd = Math.max(codes.lastIndexOf(LF, near), codes.lastIndexOf(CR, near)) + 1;
+    this.slot = new Int32Array(shape.fields).fill(-1);
+    take.forEach(({ column }, i) => {
       this.slot[column] = i;
     });
-    this.shifts = Int32Array.from(plan.take, (taken) => taken.exponent);
-    this.last = plan.take.reduce((last, { column }) => Math.max(last, column), 0);
-    this.endsRow = this.last === plan.shape.fields - 1;
-    this.separator = SEPARATOR_CODE[plan.dialect.separator];
-    this.decimalCode = DECIMAL_CODE[plan.dialect.decimalMark];
-    const isPlain = plan.dialect.thousandsMark === 'none' && this.separator !== this.decimalCode;
-    this.isFast = isPlain && plan.take.every((taken) => taken.unitExponent === 0);
+    this.shifts = Int32Array.from(take, (taken) => taken.exponent);
+    this.last = take.reduce((last, { column }) => Math.max(last, column), 0);
+    this.endsRow = this.last === shape.fields - 1;
+    this.separator = SEPARATOR_CODE[dialect.separator];
+    this.decimalCode = DECIMAL_CODE[dialect.decimalMark];
+    const isPlain = dialect.thousandsMark === 'none' && this.separator !== this.decimalCode;
+    this.isFast = isPlain && take.every((taken) => taken.unitExponent === 0);
+    this.missesLeft = this.isFast && take.length === shape.fields ? MISSES_MOST : 0;
   }
 
   /** Takes rows until a line starts at or behind `stop`. */
@@ -125,24 +89,57 @@ class RowScan {
     const { codes } = this.text;
     const { table } = this;
     const fastStop = this.isFast ? Math.min(stop, this.fastEnd) : 0;
+    startRun(table, this.line);
     while (this.position < stop && table.secondTableLine === 0) {
-      makeRoom(table);
+      if (makeRoom(table)) this.format = undefined;
+      if (this.missesLeft > 0 && this.position < fastStop && this.takePlainRows(fastStop)) continue;
       const next = this.position < fastStop ? this.fastRow(codes, this.position) : -1;
-      if (next < 0) {
-        const end = lineEnd(codes, this.position, codes.length);
-        slowRow(this.text, this.plan, table, {
-          start: this.position,
-          end,
-          line: this.line,
-          isLast: end >= codes.length,
-        });
-        this.position = nextLine(codes, end, codes.length);
-      } else {
-        table.lines[table.rows++] = this.line;
+      if (next >= 0) {
+        table.rows += 1;
         this.position = next;
-      }
-      this.line += 1;
+        this.line += 1;
+      } else this.takeSlowly();
     }
+  }
+
+  private takeSlowly(): void {
+    const { codes } = this.text;
+    const end = lineEnd(codes, this.position, codes.length);
+    const at = { start: this.position, end, line: this.line, isLast: end >= codes.length };
+    slowRow(this.text, this.plan, this.table, at);
+    this.position = nextLine(codes, end, codes.length);
+    this.line += 1;
+    startRun(this.table, this.line);
+  }
+
+  /** Takes what plain rows follow, as long as there is room; whether there were any. */
+  private takePlainRows(stop: number): boolean {
+    const { table } = this;
+    this.format ??= this.plainFormat();
+    const room = table.values[0]?.length ?? 0;
+    const before = table.rows;
+    let row = before;
+    let position = this.position;
+    while (position < stop && row < room) {
+      const next = plainRow(this.format, position, row);
+      if (next < 0) break;
+      position = next;
+      row += 1;
+    }
+    table.rows = row;
+    this.position = position;
+    this.line += row - before;
+    this.missesLeft = row === before ? this.missesLeft - 1 : Math.min(MISSES_MOST, this.missesLeft + row - before);
+    return row > before;
+  }
+
+  private plainFormat(): PlainFormat {
+    const columns = Array.from(this.slot, (at) => this.table.values[at]!);
+    const shifts = Int32Array.from(this.slot, (at) => this.shifts[at]!);
+    const isShifted = shifts.some((shift) => shift !== 0);
+    const { view, decimalCode } = this;
+    const separator = this.separator || BLANK;
+    return { codes: this.text.codes, view, separator, decimalCode, columns, shifts, isShifted };
   }
 
   /** The quick way: a row of digits, signs and separators. Returns where the next line starts, or -1 for anything else. */

@@ -1,11 +1,12 @@
 import { QUOTE } from '../characters.js';
 import { commentAt, remarkAt, withoutMark } from '../comments.js';
 import { SEPARATOR_CODE } from '../dialect.js';
-import type { Characters } from '../encoding.js';
+import { type Characters, refuseHighCodes } from '../encoding.js';
 import { headingsIn, knownMeanings, meaningOf } from '../recognise/column-names.js';
 import { hasInk } from '../recognise/sample.js';
 import { type Field, splitRow } from '../row.js';
-import type { ScanPlan, Table } from './scan-rows.js';
+import type { ScanPlan } from './scan-rows.js';
+import { LISTED_MOST, skipRow, type Table } from './table.js';
 
 interface LineAt {
   readonly start: number;
@@ -14,16 +15,16 @@ interface LineAt {
   readonly isLast: boolean; // no line end follows: it may be cut off
 }
 
-const LISTED_MOST = 200;
 const LINE_LENGTH_MOST = 1_000_000; // a longer line is no row of a table
 
 /** Takes one line in the careful way: quotes, units behind numbers, thousands marks, remarks; or says why it is no row. */
 export function slowRow(text: Characters, plan: ScanPlan, table: Table, at: LineAt): void {
   const { codes } = text;
   if (!hasInk(codes, at.start, at.end)) return;
+  if (text.isAssumed) refuseHighCodes(codes, at.start, at.end);
   const comment = commentAt(codes, at.start, at.end);
   if (comment === 'yes') keepComment(text, table, at);
-  else if (at.end - at.start > LINE_LENGTH_MOST) skip(table, at, 'is too long for a row of data');
+  else if (at.end - at.start > LINE_LENGTH_MOST) skipRow(table, at.line, 'is too long for a row of data');
   else {
     const fields = splitRow(text, at.start, at.end, plan.dialect);
     const refusal = take(text, fields, plan, table, at);
@@ -64,7 +65,7 @@ function refuseRow(
   else if (isWords && table.rows > 0 && startsTable(text, plan, at)) table.secondTableLine = at.line;
   else {
     if (isWords) table.textLines += 1;
-    skip(table, at, refusal);
+    skipRow(table, at.line, refusal);
   }
 }
 
@@ -95,7 +96,6 @@ function take(
     const own = field.unit && field.unit.kind !== 'level' ? field.unit.exponent - unitExponent : 0;
     (table.values[i] as Float64Array)[table.rows] = shifted(field.value, exponent + own);
   });
-  table.lines[table.rows] = at.line;
   table.rows += 1;
   return undefined;
 }
@@ -117,9 +117,4 @@ function keepComment(text: Characters, table: Table, at: LineAt): void {
   if (table.comments.length >= LISTED_MOST) return;
   const words = withoutMark(text.decode(at.start, Math.min(at.end, at.start + 2000)));
   if (words !== '') table.comments.push(words);
-}
-
-function skip(table: Table, at: LineAt, reason: string): void {
-  if (table.skipped.length < LISTED_MOST) table.skipped.push({ line: at.line, reason });
-  table.skippedCount += 1;
 }

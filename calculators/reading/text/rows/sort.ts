@@ -1,7 +1,7 @@
 import type { Finding } from '../../../../shared/output.js';
 import type { Points } from './curve.js';
 import { finding } from './findings.js';
-import type { Watch } from './scan-rows.js';
+import type { Watch } from './table.js';
 
 /** Brings the points into ascending frequency, rows of one frequency in the order of the file. */
 export function sortByFrequency(points: Points, findings: Finding[], watch: Watch): void {
@@ -13,7 +13,6 @@ export function sortByFrequency(points: Points, findings: Finding[], watch: Watc
   points.frequency = picked(frequency, order);
   points.first = picked(points.first, order);
   if (points.second) points.second = picked(points.second, order);
-  points.lines = Uint32Array.from(order, (i) => points.lines[i]!);
   const isReversed = falls === frequency.length - 1;
   const what = isReversed
     ? 'The frequencies fall from row to row'

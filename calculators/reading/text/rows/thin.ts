@@ -1,7 +1,7 @@
 import type { Finding } from '../../../../shared/output.js';
 import type { Points } from './curve.js';
 import { finding } from './findings.js';
-import type { Watch } from './scan-rows.js';
+import type { Watch } from './table.js';
 
 /** The most points that a sweep holds. */
 export const POINTS_MOST = 20_000;
@@ -50,20 +50,44 @@ function averageBin(points: Points, isPair: boolean, from: number, to: number, a
     if (second) second[at] = second[from]!;
     return;
   }
-  let lnF = 0;
-  let lnZ = 0;
-  let phase = 0;
-  let before = 0;
+  if (isPair && second) toPolar(first, second, from, to);
+  const phase = second ? meanUnwrapped(second, from, to) : 0;
+  const size = geometricMean(first, from, to);
+  frequency[at] = geometricMean(frequency, from, to);
+  first[at] = isPair ? size * Math.cos(phase) : size;
+  if (second) second[at] = isPair ? size * Math.sin(phase) : phase;
+}
+
+function toPolar(re: Float64Array, im: Float64Array, from: number, to: number): void {
   for (let i = from; i < to; i += 1) {
-    lnF += Math.log(frequency[i]!);
-    lnZ += isPair ? Math.log(Math.hypot(first[i]!, second![i]!)) : Math.log(first[i]!);
-    if (!second) continue;
-    const angle = isPair ? Math.atan2(second[i]!, first[i]!) : second[i]!;
-    before = i === from ? angle : angle - 2 * Math.PI * Math.round((angle - before) / (2 * Math.PI));
-    phase += before;
+    const [a, b] = [re[i]!, im[i]!];
+    re[i] = Math.sqrt(a * a + b * b);
+    im[i] = Math.atan2(b, a);
   }
-  const size = Math.exp(lnZ / count);
-  frequency[at] = Math.exp(lnF / count);
-  first[at] = isPair ? size * Math.cos(phase / count) : size;
-  if (second) second[at] = isPair ? size * Math.sin(phase / count) : phase / count;
+}
+
+/** exp of the mean logarithm, as the root of a product: one logarithm for many factors. */
+function geometricMean(values: Float64Array, from: number, to: number): number {
+  const reference = values[from]!;
+  let product = 1;
+  let sum = 0;
+  for (let i = from + 1; i < to; i += 1) {
+    product *= values[i]! / reference;
+    if (product > 1e100 || product < 1e-100) {
+      sum += Math.log(product);
+      product = 1;
+    }
+  }
+  return reference * Math.exp((sum + Math.log(product)) / (to - from));
+}
+
+function meanUnwrapped(phase: Float64Array, from: number, to: number): number {
+  let before = phase[from]!;
+  let sum = before;
+  for (let i = from + 1; i < to; i += 1) {
+    const step = phase[i]! - before;
+    before += step > Math.PI || step < -Math.PI ? step - 2 * Math.PI * Math.round(step / (2 * Math.PI)) : step;
+    sum += before;
+  }
+  return sum / (to - from);
 }

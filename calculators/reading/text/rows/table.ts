@@ -1,0 +1,69 @@
+export interface SkippedRow {
+  readonly line: number;
+  readonly reason: string;
+}
+
+/** The rows taken from a file. Shape of each of `values`: room for (rows) and more. */
+export interface Table {
+  rows: number;
+  values: Float64Array[]; // one for each taken column
+  readonly runs: { readonly row: number; readonly line: number }[]; // where rows cease to stand in consecutive lines
+  skipped: SkippedRow[]; // the first 200
+  skippedCount: number;
+  comments: string[];
+  textLines: number; // lines of words among the data
+  truncatedLine: number; // the last line, where it was cut off; 0 otherwise
+  secondTableLine: number; // where a second table starts, which is not read; 0 otherwise
+}
+
+export interface Watch {
+  progress(done: number, total: number): void;
+  checkpoint(): void;
+}
+
+/** `room`: how many rows are expected. */
+export function emptyTable(room: number, columns: number): Table {
+  return {
+    rows: 0,
+    values: Array.from({ length: columns }, () => new Float64Array(room)),
+    runs: [],
+    skipped: [],
+    skippedCount: 0,
+    comments: [],
+    textLines: 0,
+    truncatedLine: 0,
+    secondTableLine: 0,
+  };
+}
+
+/** Makes room for one row more, half as much again when the table is full; whether the columns are new ones. */
+export function makeRoom(table: Table): boolean {
+  const room = table.values[0]?.length ?? 0;
+  if (table.rows < room) return false;
+  table.values = table.values.map((old) => {
+    const grown = new Float64Array(Math.ceil(1.5 * room) + 16);
+    grown.set(old);
+    return grown;
+  });
+  return true;
+}
+
+/** Notes that the rows from the next one on stand in consecutive lines from `line`. */
+export function startRun(table: Table, line: number): void {
+  while (table.runs.at(-1)?.row === table.rows) table.runs.pop();
+  const last = table.runs.at(-1);
+  if (!last || last.line + table.rows - last.row !== line) table.runs.push({ row: table.rows, line });
+}
+
+/** The line in which a row stands, counted from 1. */
+export function lineOf(table: Table, row: number): number {
+  const run = table.runs.findLast((candidate) => candidate.row <= row);
+  return run ? run.line + row - run.row : 0;
+}
+
+export const LISTED_MOST = 200;
+
+export function skipRow(table: Table, line: number, reason: string): void {
+  if (table.skipped.length < LISTED_MOST) table.skipped.push({ line, reason });
+  table.skippedCount += 1;
+}
