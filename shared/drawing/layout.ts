@@ -166,7 +166,7 @@ function endLabelRoom(input: ChartInput, sizes: TextSizes): number {
   const drawn = drawnSweeps(input);
   if (drawn.length === 0 || drawn.length > MOST_END_LABELS || input.widthPx < END_LABEL_LEAST_WIDTH) return 0;
   const widest = Math.max(...drawn.map((sweep) => textWidthPx(sweep.name, 'ui', sizes.note, 650)));
-  return Math.min(widest + END_LABEL_LEAD, input.widthPx * 0.18);
+  return Math.min(widest + END_LABEL_LEAD, input.widthPx * 0.21);
 }
 
 interface LegendItem {

@@ -57,12 +57,6 @@ export function ChartControls({ view, locale, onStepBack, onAxes }: ChartControl
       </div>
       <RangeFields view={view} locale={locale} />
       <div className="chart-row">
-        <Swap
-          label={words.frequencyScale}
-          symbol="f"
-          kind={state.frequencyScale}
-          onSwap={() => swapScale(view, 'frequency')}
-        />
         {state.view === 'magnitude-phase' && (
           <Swap
             label={words.magnitudeScale}
