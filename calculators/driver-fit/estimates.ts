@@ -16,8 +16,33 @@ const OF_RESONANCE: ReadonlySet<string> = new Set(
 );
 export const isOfResonance = (id: string): boolean => OF_RESONANCE.has(id);
 
-/** Figures that move with a scale error of Z over the resonance, which a local fit cannot see: a drift, a warm coil. */
-const FOLLOWS_SCALE: ReadonlySet<string> = new Set(['Re', 'Qes', 'Qts']);
+/**
+ * By how much a slow wave of the misfit over the resonance, 1 in ln Z, moves a figure: Re and with it Qes and Qts by as
+ * much; fs by 1/(2·Qms), the slope of the phase there; what follows from a ratio of two resonances by 2(1 + s)/s times
+ * that, s = m/Mms or Vas/Vb. A fit to the same points cannot see it: a drift, a warm coil, a coil of another kind.
+ */
+function wavesReach(id: string, { models, analysis }: BandResult): number {
+  const { values } = models[0].propagated;
+  const ofFs = 1 / (2 * Math.max(values.Qms ?? 1, 0.5));
+  const heaviestKg = Math.max(...analysis.setup.sweeps.map(({ measured }) => measured.massKg));
+  const shift = heaviestKg > 0 && values.Mms ? heaviestKg / values.Mms : 1;
+  const ofRatio = ((2 * (1 + shift)) / shift) * ofFs;
+  switch (id) {
+    case 'Re':
+    case 'Qes':
+    case 'Qts':
+      return 1;
+    case 'fs':
+    case 'fc':
+      return ofFs;
+    case 'Mms':
+    case 'Cms':
+    case 'Vas':
+      return ofRatio;
+    default:
+      return 0;
+  }
+}
 const wavesOf = (bands: readonly BandResult[]): number =>
   Math.max(...bands.flatMap(({ analysis }) => analysis.structures.map(({ waves }) => waves)));
 
@@ -43,7 +68,7 @@ function fitEstimate(id: string, { models, stretch, noiseDof }: BandResult): Est
  * A figure of the resonance means two things where the suspension creeps: the model's parameter, which is reported, and
  * what the trade's three-point definition gives on the same motional impedance. The interval then covers both. Where
  * the sweep was fitted in parts, it reaches to what the definition gives in the other parts, and their spread enters u,
- * with the slow waves of the misfit over the whole sweep as a scale error that no part of it can see.
+ * with the slow waves of the misfit over the whole sweep as an error that no part of it can see.
  */
 function resonanceEstimate(id: string, { resonance, all }: BandResults): Estimate | null {
   const main = fitEstimate(id, resonance);
@@ -56,7 +81,7 @@ function resonanceEstimate(id: string, { resonance, all }: BandResults): Estimat
   for (const value of others) ends.push({ low: value, high: value });
   if (ends.length === 1) return main;
   const centre = byDefinition?.value ?? main.value;
-  const scale = FOLLOWS_SCALE.has(id) ? Math.abs(centre) * wavesOf(all) : 0;
+  const scale = Math.abs(centre) * wavesOf(all) * wavesReach(id, resonance);
   const drift = Math.hypot(deviationOf([centre, ...others]), scale);
   const uncertainty = Math.hypot(main.uncertainty, drift);
   const half = NORMAL_FACTOR * stretch * uncertainty;
