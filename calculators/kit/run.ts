@@ -12,7 +12,7 @@ export const SILENT_CONTEXT: RunContext = { progress: () => {}, checkpoint: () =
  * Runs one calculator: migrates and parses its settings, checks its roles and keys, puts every sweep's rows in order,
  * runs, and checks the answer. The command line, the workers and the server all come through here.
  * Errors: InputError `bad-setting` (a setting, role or key that cannot be used), `missing-input` (a role or key that
- * is not there) and those of an unusable sweep; Stopped when the context says so. Never a number that is not finite.
+ * is not there) and those of an unusable sweep. Never a number that is not finite.
  */
 export function runCalculator(
   definition: CalculatorDefinition,

@@ -29,6 +29,8 @@ export const sheet = {
     projectName: 'From my browser',
     keep: 'Keep it',
     moving: 'Moving',
+    leftOut: (count: number) =>
+      `${count} kept ${count === 1 ? 'result was' : 'results were'} left behind: the project reads the same file otherwise. Run the cards again and keep them there.`,
   },
   tryNotice: 'This sheet lives only in this browser.',
   readOnly: 'You can look and export here. A member of the team can change it.',

@@ -73,12 +73,6 @@ export function usePreferences(): Preferences {
   return useSyncExternalStore(subscribe, getPreferences);
 }
 
-/** 'dark' or 'light' as drawn now: for what is painted on a canvas. */
-export function useShownTheme(): 'light' | 'dark' {
-  const { theme } = usePreferences();
-  const system = useSyncExternalStore(subscribeToSystem, prefersDark);
-  return theme === 'dark' || (theme === 'system' && system) ? 'dark' : 'light';
-}
 function subscribeToSystem(listener: () => void): () => void {
   const query = window.matchMedia('(prefers-color-scheme: dark)');
   query.addEventListener('change', listener);

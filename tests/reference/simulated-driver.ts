@@ -37,8 +37,6 @@ export interface Load {
 }
 
 export const fsOf = ({ mms, cms }: DriverParts): number => 1 / (2 * Math.PI * Math.sqrt(mms * cms));
-export const qmsOf = (d: DriverParts): number => (2 * Math.PI * fsOf(d) * d.mms) / d.rms;
-export const qesOf = (d: DriverParts): number => (2 * Math.PI * fsOf(d) * d.mms * d.re) / (d.bl * d.bl);
 
 export function motionalOf(d: DriverParts, frequencyHz: number, load: Load = {}): Complex {
   const omega = 2 * Math.PI * frequencyHz;

@@ -4,7 +4,6 @@ export const LF = 10;
 export const CR = 13;
 export const BLANK = 32;
 export const QUOTE = 34;
-export const APOSTROPHE = 39;
 export const PLUS = 43;
 export const COMMA = 44;
 export const MINUS = 45;

@@ -1,6 +1,5 @@
 import { displayUnit } from '../../quantities.js';
 import { formatDecimals, formatQuantity } from '../../quantity-text.js';
-import { chart } from '../../text/chart.js';
 import { activeSweep, type ChartInput } from '../chart-input.js';
 import { type ChartLayout, NEAT_GAP, type Strip } from '../layout.js';
 import { lineColor } from '../palette.js';
@@ -209,4 +208,3 @@ function firstFree(rows: number[], x: number, width: number): number {
   rows[at] = x + width;
   return at;
 }
-export const cursorName = chart.cursor.name;

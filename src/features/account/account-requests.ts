@@ -20,7 +20,6 @@ export const verify = (code: string, password?: string) =>
 export const askForReset = (email: string) => api.post('/account/forgot', { email }, Anything);
 export const resetPassword = (code: string, password: string) =>
   api.post('/account/reset', { code, password }, Anything);
-export const sendVerificationAgain = () => api.post('/me/verification', {}, Anything);
 
 const SessionsSchema = z.union([z.array(SessionSchema), z.object({ items: z.array(SessionSchema) })]);
 export const sessionsQuery = {

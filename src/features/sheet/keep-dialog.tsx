@@ -7,6 +7,7 @@ import { Button } from '../../components/button.js';
 import { Dialog } from '../../components/dialog.js';
 import { ErrorBar } from '../../components/error-bar.js';
 import { Select } from '../../components/select.js';
+import { showToast } from '../../components/toast-store.js';
 import { api } from '../../lib/api.js';
 import { chosenTeam } from '../../lib/me.js';
 import { browserStore } from '../../lib/project-store/browser-store.js';
@@ -40,9 +41,12 @@ export function KeepDialog({ me, onClose, onKept }: KeepDialogProps) {
     setProgress({ done: 0, total: 1 });
     try {
       const projectId = target === NEW ? await newProject(team.id) : target;
-      const { sheets } = await keepInAccount(browserStore(), serverStore(projectId, undefined), (done, total) =>
-        setProgress({ done, total }),
+      const { sheets, leftOut } = await keepInAccount(
+        browserStore(),
+        serverStore(projectId, undefined),
+        (done, total) => setProgress({ done, total }),
       );
+      if (leftOut.length > 0) showToast({ message: words.leftOut(leftOut.length), tone: 'fault' });
       const sheetId = Object.values(sheets)[0];
       onKept(sheetId ? `/p/${projectId}/sheet/${sheetId}` : `/p/${projectId}`);
     } catch (failure) {

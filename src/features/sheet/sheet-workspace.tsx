@@ -9,6 +9,7 @@ import { StatusWord } from '../../components/status-word.js';
 import { classNames } from '../../lib/class-names.js';
 import { handFiles } from '../../lib/handed-files.js';
 import { useProjectStore } from '../../lib/project-store/store-context.js';
+import { warmCalculators } from '../../workers/pool.js';
 import { ChartPane, chartStateOf } from './chart-pane.js';
 import { ClashDialog } from './clash-dialog.js';
 import { FootnotesPane } from './footnotes-pane.js';
@@ -50,6 +51,7 @@ export function SheetWorkspace({ sheet, slots, frame, opensUnpack }: SheetWorksp
   });
   const scene = useSheetScene({ sheet, state, slots, openUnpack });
   useWorkspaceKeys(state);
+  useEffect(warmCalculators, []);
   const bar = <SheetBar state={state} />;
   return (
     <SheetSceneProvider value={scene}>

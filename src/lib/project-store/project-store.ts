@@ -59,7 +59,7 @@ export interface ProjectStore {
   readonly results: Rows<Result, CreateResult, { name: string }>;
   readonly items: Rows<Item, CreateItem, UpdateItem>;
 
-  /** Stores a source and the sweep read from it. Rejects with what `refusalOf` and `alreadyHere` recognise. */
+  /** Stores a source and the sweep read from it. A file that is here already is recognised by `alreadyHere`. */
   addSweep(source: SourceBytes, sweep: CreateSweep, options?: AddOptions): Promise<SweepRow>;
   /** Which of these files (sha-256) are here already. */
   knownSources(sha256: readonly string[]): Promise<readonly KnownSource[]>;

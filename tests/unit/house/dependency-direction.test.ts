@@ -19,7 +19,7 @@ function plantedTree(files: Readonly<Record<string, string>>): string {
 }
 
 const sound = {
-  'shared/units.ts': `import { z } from 'zod';\nimport { scaleLog } from 'd3-scale';\nexport const units = [z, scaleLog];\n`,
+  'shared/units.ts': `import { z } from 'zod';\nexport const units = [z];\n`,
   'calculators/kit/kit.ts': `import { units } from '../../shared/units.js';\nexport const kit = units;\n`,
   'calculators/driver/index.ts': `import { kit } from '../kit/kit.js';\nimport { curve } from './curve.js';\nexport const driver = [kit, curve];\n`,
   'calculators/driver/curve.ts': `import { Matrix } from 'ml-matrix';\nexport const curve = Matrix;\n`,
