@@ -125,13 +125,14 @@ describe('random numbers', () => {
 
   it('draw within their limits', () => {
     const random = seededRandom(3);
-    for (let i = 0; i < 1000; i++) {
-      expect(random.below(3)).toBeLessThan(3);
-      const x = random.logBetween(0.01, 100);
-      expect(x).toBeGreaterThanOrEqual(0.01);
-      expect(x).toBeLessThan(100);
-      expect(random.between(-2, 5)).toBeGreaterThanOrEqual(-2);
-    }
+    const all = Array.from({ length: 1000 }, () => [
+      random.below(3),
+      random.logBetween(0.01, 100),
+      random.between(-2, 5),
+    ]);
+    expect(new Set(all.map(([k]) => k))).toEqual(new Set([0, 1, 2]));
+    expect(all.every(([, x = 0]) => x >= 0.01 && x < 100)).toBe(true);
+    expect(all.every(([, , x = 9]) => x >= -2 && x < 5)).toBe(true);
   });
 });
 
