@@ -36,8 +36,6 @@ export interface Load {
   readonly stiffnessOfAir?: number; // ρc², Pa
 }
 
-export const fsOf = ({ mms, cms }: DriverParts): number => 1 / (2 * Math.PI * Math.sqrt(mms * cms));
-
 export function motionalOf(d: DriverParts, frequencyHz: number, load: Load = {}): Complex {
   const omega = 2 * Math.PI * frequencyHz;
   const compliance = times(complex(d.cms), d.compliance?.(omega) ?? complex(1));

@@ -11,13 +11,22 @@ import { useSheetScene } from './sheet-context.js';
 
 const words = text.sheet.footnotes;
 
+interface FootnotesPaneProps {
+  store: ChartStore;
+  sizeMenu: ReactNode;
+  /** Closed, only the heading is there: nothing hides below it. */
+  isOpen: boolean;
+}
+
 /** The Readout: every drawn sweep at cursors A and B, their difference and their ratio. */
-export function FootnotesPane({ store, sizeMenu }: { store: ChartStore; sizeMenu: ReactNode }) {
+export function FootnotesPane({ store, sizeMenu, isOpen }: FootnotesPaneProps) {
   return (
     <Pane id="footnotes" title={text.sheet.panes.footnotes} actions={sizeMenu}>
-      <div className="p-3">
-        <Readout store={store} />
-      </div>
+      {isOpen && (
+        <div className="p-3">
+          <Readout store={store} />
+        </div>
+      )}
     </Pane>
   );
 }

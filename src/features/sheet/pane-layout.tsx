@@ -20,7 +20,7 @@ const words = text.sheet;
 const WIDTHS: Layout = { ledger: 23, chart: 50, results: 27 };
 const STEP = 4; // per cent, of "wider" and "narrower"
 
-export type PaneContent = Readonly<Record<PaneId, (sizeMenu: ReactNode) => ReactNode>>;
+export type PaneContent = Readonly<Record<PaneId, (sizeMenu: ReactNode, isOpen: boolean) => ReactNode>>;
 
 /** The four panes for the screen at hand; their sizes are remembered per person. */
 export function PaneLayout({ panes }: { panes: PaneContent }) {
@@ -74,7 +74,7 @@ function SplitLayout({ panes, size }: { panes: PaneContent; size: Exclude<Screen
               {size === 'medium' && pane === 'results' ? (
                 <SideSwitch side={side} onSide={setSide} panes={panes} sizeMenu={sizeMenu} />
               ) : (
-                panes[pane](sizeMenu(pane))
+                panes[pane](sizeMenu(pane), true)
               )}
             </Panel>,
           ])}
@@ -99,6 +99,7 @@ function SplitLayout({ panes, size }: { panes: PaneContent; size: Exclude<Screen
           >
             {isFootOpen ? words.closePane(words.panes.footnotes) : words.openPane(words.panes.footnotes)}
           </Button>,
+          isFootOpen,
         )}
       </Panel>
     </Group>
@@ -130,7 +131,7 @@ function SideSwitch({ side, onSide, panes, sizeMenu }: SideSwitchProps) {
       </div>
       {(['ledger', 'results'] as const).map((pane) => (
         <div key={pane} hidden={pane !== side} className="min-h-0 flex-1">
-          {panes[pane](sizeMenu('results'))}
+          {panes[pane](sizeMenu('results'), pane === side)}
         </div>
       ))}
     </div>
@@ -143,7 +144,7 @@ function SmallLayout({ panes }: { panes: PaneContent }) {
     <>
       {(Object.keys(words.panes) as PaneId[]).map((pane) => (
         <div key={pane} hidden={pane !== open} className="min-h-0 flex-1">
-          {panes[pane](null)}
+          {panes[pane](null, pane === open)}
         </div>
       ))}
       <nav aria-label={words.panesLabel} className="flex shrink-0 border-t border-line bg-ground">

@@ -63,7 +63,7 @@ export function SheetWorkspace({ sheet, slots, frame, opensUnpack }: SheetWorksp
               ledger: (menu) => <LedgerPane sizeMenu={menu} />,
               chart: (menu) => <ChartPane store={store} sizeMenu={menu} />,
               results: (menu) => <ResultsPane sizeMenu={menu} />,
-              footnotes: (menu) => <FootnotesPane store={store} sizeMenu={menu} />,
+              footnotes: (menu, isOpen) => <FootnotesPane store={store} sizeMenu={menu} isOpen={isOpen} />,
             }}
           />,
         )}
