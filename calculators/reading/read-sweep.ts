@@ -54,11 +54,8 @@ function refuseFormat(overrides: ReadingOverrides): void {
   );
 }
 
-/** Copies, so that a million rows of scratch memory do not live on with the sweep. */
 function curveOf(points: TextReading['points'], isPair: boolean): Omit<Sweep, 'name' | 'conditions'> {
-  const frequencyHz = points.frequency.slice();
-  const first = points.first.slice();
-  const second = points.second?.slice();
+  const { frequency: frequencyHz, first, second } = points;
   if (!second) return { frequencyHz, magnitudeOhm: first };
   if (isPair) return { frequencyHz, realOhm: first, imaginaryOhm: second };
   const realOhm = first.map((size, i) => size * Math.cos(second[i]!));

@@ -13,7 +13,7 @@ import { attachedUnit } from './recognise/sample-curve.js';
 import { type Points, toPoints } from './rows/curve.js';
 import { finding } from './rows/findings.js';
 import { type ScanPlan, scanRows, type TakenColumn } from './rows/scan-rows.js';
-import type { Table, Watch } from './rows/table.js';
+import { giveBack, type Table, type Watch } from './rows/table.js';
 import { thin } from './rows/thin.js';
 
 export interface TextReading {
@@ -54,8 +54,11 @@ function readFrom(text: Characters, fileName: string, overrides: ReadingOverride
     phaseUnit: found.units.phase.unit,
     isTurned: overrides.phaseSign === 'turned',
   };
-  const points = toPoints(table, kind, fileName, findings, watch);
-  thin(points, isPair, findings, watch);
+  const views = toPoints(table, kind, fileName, findings, watch);
+  thin(views, isPair, findings, watch);
+  const { frequency, first, second } = views;
+  const points = { frequency: frequency.slice(), first: first.slice(), second: second?.slice() };
+  giveBack(table);
   const sign = checkSign(points, isPair, findings);
   findings.push(...skippedFindings(table));
   return { points, isPair, findings, reading: readingOf(found, table, overrides, sign) };

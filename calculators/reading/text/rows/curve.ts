@@ -46,57 +46,68 @@ export function toPoints(table: Table, kind: PointsKind, fileName: string, findi
 }
 
 const LARGEST = 1e100; // no impedance comes near; its square is still finite
-const ROWS_A_LOOK = 1 << 18;
+const ROWS_A_ROUND = 1024; // short rounds: the engine compiles them whole, and Stop is looked for in between
 
 /** Applies the units, drops 0 Hz and what is too large, and refuses what no impedance can be. */
 function cleaned(table: Table, kind: PointsKind, fileName: string, findings: Finding[], watch: Watch): Points {
-  const [frequency, first, second] = table.values as [Float64Array, Float64Array, Float64Array | undefined];
-  const { isPair } = kind;
-  let kept = 0;
-  let dc = 0;
-  for (let from = 0; from < table.rows; from += ROWS_A_LOOK) {
-    const to = Math.min(table.rows, from + ROWS_A_LOOK);
+  const cleaning: Cleaning = { table, isPair: kind.isPair, fileName, kept: 0, dc: 0 };
+  for (let from = 0; from < table.rows; from += ROWS_A_ROUND) {
+    const to = Math.min(table.rows, from + ROWS_A_ROUND);
     applyUnits(table.values, kind, from, to);
-    for (let i = from; i < to; i += 1) {
-      const f = frequency[i]!;
-      const a = first[i]!;
-      const b = second ? second[i]! : 0;
-      if (!(Math.abs(f) < LARGEST && Math.abs(a) < LARGEST && Math.abs(b) < LARGEST)) {
-        skipRow(table, lineOf(table, i), 'holds a number too large to use');
-      } else if (f > 0) {
-        if (isPair ? a * a + b * b === 0 : a <= 0) throw noImpedance(a, lineOf(table, i), fileName);
-        frequency[kept] = f;
-        first[kept] = a;
-        if (second) second[kept] = b;
-        kept += 1;
-      } else if (f === 0) dc += 1;
-      else throw belowZero(f, lineOf(table, i), fileName);
-    }
+    cleanRows(cleaning, from, to);
     watch.checkpoint();
   }
+  const { kept, dc } = cleaning;
   if (dc > 0) {
     const what = dc === 1 ? 'A row at 0 Hz was' : `${dc} rows at 0 Hz were`;
     findings.push(finding('dc-point', `${what} left out: a sweep has no point at zero frequency.`, { rows: dc }));
   }
-  const [frequencies, firsts, seconds] = [frequency, first, second].map((values) => values?.subarray(0, kept));
-  return { frequency: frequencies as Float64Array, first: firsts as Float64Array, second: seconds };
+  const [frequency, first, second] = table.values.map((values) => values.subarray(0, kept));
+  return { frequency: frequency as Float64Array, first: first as Float64Array, second };
+}
+
+interface Cleaning {
+  readonly table: Table;
+  readonly isPair: boolean;
+  readonly fileName: string;
+  kept: number; // rows, moved together at the front of the columns
+  dc: number;
+}
+
+function cleanRows(cleaning: Cleaning, from: number, to: number): void {
+  const { table, isPair, fileName } = cleaning;
+  const [frequency, first, second] = table.values as [Float64Array, Float64Array, Float64Array | undefined];
+  let { kept } = cleaning;
+  for (let i = from; i < to; i += 1) {
+    const f = frequency[i]!;
+    const a = first[i]!;
+    const b = second ? second[i]! : 0;
+    if (!(Math.abs(f) < LARGEST && Math.abs(a) < LARGEST && Math.abs(b) < LARGEST)) {
+      skipRow(table, lineOf(table, i), 'holds a number too large to use');
+    } else if (f > 0) {
+      if (isPair ? a * a + b * b === 0 : a <= 0) throw noImpedance(a, lineOf(table, i), fileName);
+      frequency[kept] = f;
+      first[kept] = a;
+      if (second) second[kept] = b;
+      kept += 1;
+    } else if (f === 0) cleaning.dc += 1;
+    else throw belowZero(f, lineOf(table, i), fileName);
+  }
+  cleaning.kept = kept;
 }
 
 /** To Hz, ohm and radians where the file has others; the powers of ten of kHz and kilohm were applied while reading. */
 function applyUnits(values: readonly Float64Array[], kind: PointsKind, from: number, to: number): void {
-  const [frequency, first, second] = values.map((column) => column.subarray(from, to));
-  if (kind.frequencyUnit === 'rad/s') divide(frequency, 2 * Math.PI);
-  if (kind.magnitudeUnit === 'dB')
-    first?.forEach((level, i) => {
-      first[i] = 10 ** (level / 20);
-    });
+  const [frequency, first, second] = values;
+  if (kind.frequencyUnit === 'rad/s') divide(frequency, 2 * Math.PI, from, to);
+  if (kind.magnitudeUnit === 'dB') for (let i = from; first && i < to; i += 1) first[i] = 10 ** (first[i]! / 20);
   const sign = kind.isTurned ? -1 : 1;
-  if (!kind.isPair && kind.phaseUnit === 'degree') divide(second, (sign * 180) / Math.PI);
-  else if (kind.isTurned) divide(second, -1);
+  if (!kind.isPair && kind.phaseUnit === 'degree') divide(second, (sign * 180) / Math.PI, from, to);
+  else if (kind.isTurned) divide(second, -1, from, to);
 }
 
-function divide(values: Float64Array | undefined, by: number): void {
-  if (values) for (let i = 0; i < values.length; i += 1) values[i] = values[i]! / by;
+function divide(values: Float64Array | undefined, by: number, from: number, to: number): void {
+  if (values) for (let i = from; i < to; i += 1) values[i] = values[i]! / by;
 }
 
 function belowZero(f: number, line: number, fileName: string): InputError {
@@ -122,10 +133,9 @@ export const where = (fileName: string, line: number): string =>
  */
 function averageDuplicates(points: Points, isPair: boolean, findings: Finding[]): void {
   const { frequency, first, second } = points;
-  let kept = 1;
-  while (kept < frequency.length && frequency[kept] !== frequency[kept - 1]) kept += 1; // none so far
+  let kept = 0;
+  while (kept < frequency.length && !hasDoubled(frequency, kept, kept + ROWS_A_ROUND)) kept += ROWS_A_ROUND;
   if (kept >= frequency.length) return;
-  kept -= 1;
   let doubled = 0;
   for (let i = kept; i < frequency.length; ) {
     let end = i + 1;
@@ -144,6 +154,12 @@ function averageDuplicates(points: Points, isPair: boolean, findings: Finding[])
   const what = doubled === 1 ? 'frequency occurs' : 'frequencies occur';
   const message = `${doubled} ${what} more than once; the readings were averaged.`;
   findings.push(finding('duplicate-frequency', message, { frequencies: doubled }));
+}
+
+function hasDoubled(frequency: Float64Array, from: number, to: number): boolean {
+  const end = Math.min(to, frequency.length - 1);
+  for (let i = from + 1; i <= end; i += 1) if (frequency[i] === frequency[i - 1]) return true;
+  return false;
 }
 
 function mean(values: Float64Array, from: number, to: number): number {

@@ -5,7 +5,7 @@ import type { Characters } from '../encoding.js';
 import type { Shape } from '../recognise/guess-dialect.js';
 import { type PlainFormat, plainRow } from './plain-row.js';
 import { slowRow } from './slow-row.js';
-import { emptyTable, makeRoom, startRun, type Table, type Watch } from './table.js';
+import { emptyTable, makeRoom, roomIn, startRun, type Table, type Watch } from './table.js';
 
 /** A column to take: where it stands in the row, and the power of ten its unit adds (kHz: 3). */
 export interface TakenColumn {
@@ -116,7 +116,7 @@ class RowScan {
   private takePlainRows(stop: number): boolean {
     const { table } = this;
     this.format ??= this.plainFormat();
-    const room = table.values[0]?.length ?? 0;
+    const room = roomIn(table);
     const before = table.rows;
     let row = before;
     let position = this.position;

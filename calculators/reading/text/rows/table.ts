@@ -21,11 +21,29 @@ export interface Watch {
   checkpoint(): void;
 }
 
+const SPARE_NUMBERS_MOST = 4_000_000; // 32 MB
+
+/**
+ * Columns of the last reading, for the next one: fresh memory costs more time than filling it. What stands in them is never read before
+ * it is written, so no reading can tell whether it had them.
+ */
+let spare: Float64Array[] = [];
+
+/** The columns are free for the next reading; nobody may hold a view of them any more. */
+export function giveBack(table: Table): void {
+  const numbers = table.values.reduce((sum, column) => sum + column.length, 0);
+  if (numbers <= SPARE_NUMBERS_MOST) spare = table.values;
+  table.values = [];
+}
+
 /** `room`: how many rows are expected. */
 export function emptyTable(room: number, columns: number): Table {
+  const found = spare.filter((column) => column.length >= room).slice(0, columns);
+  spare = [];
+  while (found.length < columns) found.push(new Float64Array(room));
   return {
     rows: 0,
-    values: Array.from({ length: columns }, () => new Float64Array(room)),
+    values: found,
     runs: [],
     skipped: [],
     skippedCount: 0,
@@ -36,12 +54,19 @@ export function emptyTable(room: number, columns: number): Table {
   };
 }
 
+/** Rows that the columns can hold: spare ones may be longer than others. */
+export function roomIn({ values }: Table): number {
+  return values.reduce((least, column) => Math.min(least, column.length), Number.POSITIVE_INFINITY);
+}
+
 /** Makes room for one row more, half as much again when the table is full; whether the columns are new ones. */
 export function makeRoom(table: Table): boolean {
-  const room = table.values[0]?.length ?? 0;
+  const room = roomIn(table);
   if (table.rows < room) return false;
+  const size = Math.ceil(1.5 * room) + 16;
   table.values = table.values.map((old) => {
-    const grown = new Float64Array(Math.ceil(1.5 * room) + 16);
+    if (old.length >= size) return old;
+    const grown = new Float64Array(size);
     grown.set(old);
     return grown;
   });

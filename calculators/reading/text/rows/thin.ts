@@ -20,8 +20,7 @@ export function thin(points: Points, isPair: boolean, findings: Finding[], watch
   let from = 0;
   for (let bin = 0; bin < POINTS_MOST && from < n; bin += 1) {
     const edge = bin === POINTS_MOST - 1 ? Number.POSITIVE_INFINITY : Math.exp(low + (bin + 1) * ratio);
-    let to = from;
-    while (to < n && frequency[to]! <= edge) to += 1;
+    const to = endOfBin(frequency, from, edge);
     if (to === from) continue;
     averageBin(points, isPair, from, to, kept);
     kept += 1;
@@ -38,6 +37,12 @@ export function thin(points: Points, isPair: boolean, findings: Finding[], watch
       { points: n, kept },
     ),
   );
+}
+
+function endOfBin(frequency: Float64Array, from: number, edge: number): number {
+  let to = from;
+  while (to < frequency.length && frequency[to]! <= edge) to += 1;
+  return to;
 }
 
 /** Points [from, to) become point `at`, at ≤ from: the mean of ln f, of ln |Z| and of the phase, unwrapped within the bin. */
