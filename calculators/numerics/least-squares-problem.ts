@@ -55,7 +55,7 @@ export interface LeastSquaresOptions {
   readonly relativeOffset?: number; // stop when the relative offset falls below this; 1e-6
   readonly maxIterations?: number; // 200
   readonly absoluteSigma?: boolean; // residuals are in units of their own sigma: no scaling of the covariance
-  readonly covariance?: boolean; // false skips it, for the early stages of a fit
+  readonly covariance?: boolean; // false skips it, for the early stages of a fit: standard errors are then 0
   readonly checkpoint?: () => void; // called between iterations; may throw to stop
 }
 
