@@ -1,3 +1,4 @@
+import { vi } from 'vitest';
 import { driverFit } from '../../../calculators/driver-fit/index.js';
 import type { RoleInput } from '../../../calculators/kit/calculator.js';
 import { runCalculator } from '../../../calculators/kit/run.js';
@@ -14,6 +15,8 @@ import {
 } from '../../reference/simulated-driver.js';
 
 /** Sweeps of the check driver with 0.2 % noise, and short ways to run driver-fit on them. */
+vi.setConfig({ testTimeout: 60_000 }); // a first fit, not compiled yet, on a busy machine
+
 export const driver = checkDriver('inductor+eddy');
 export const diameterM = Math.sqrt((4 * driver.sd) / Math.PI);
 const frequencyHz = logFrequencies(300, 8, 20_000);
