@@ -3,6 +3,7 @@ import { InputError } from '../../shared/errors.js';
 import type { Output } from '../../shared/output.js';
 import type { CalculatorDefinition, RoleDeclaration, RoleInput, RoleInputs, RunContext } from './calculator.js';
 import { checkedOutput } from './checked-output.js';
+import { issueWords } from './issue-words.js';
 import { inOrder } from './sweep-order.js';
 
 /** A run that nobody watches and nobody can stop. */
@@ -39,7 +40,7 @@ export function parsedSettings<Settings extends z.ZodType>(
   const where = keys || (issue?.path.map(String).join('.') ?? '');
   const message = keys
     ? `${definition.title} has no setting named ${keys}. Leave it out, or look up its name.`
-    : `The setting ${where || 'list'} cannot be used: ${issue?.message ?? 'it does not fit'}.`;
+    : `The setting ${where || 'list'} cannot be used: ${issueWords(issue)}.`;
   throw new InputError('bad-setting', message, where);
 }
 

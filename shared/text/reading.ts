@@ -33,6 +33,7 @@ export const readingText = {
     `No unit is named; ${rounded(least)} to ${rounded(most)} looks like ${unit}.`,
   ohmUnnamed: 'No unit is named; ohm is usual.',
   levelByPhase: 'No unit is named; the phase fits a level in dB re 1 Ω better than ohm.',
+  levelBelowZero: 'No unit is named; values below zero are no magnitude in ohm, so a level in dB re 1 Ω is taken.',
   noPhaseColumn: 'There is no phase column.',
   phaseUnitByFit: (unit: string, misfitDeg: number, isClear: boolean) =>
     isClear

@@ -75,6 +75,35 @@ describe('columns without names', () => {
   });
 });
 
+describe('guesses that the data leaves open', () => {
+  it('take a magnitude with many values below zero for a level', () => {
+    const low = m.map((value) => 20 * Math.log10(value / 10));
+    const { sweep, reading } = read(table([f, low]));
+    expect(reading.magnitudeUnit).toBe('dB');
+    expect(reading.guesses.magnitudeUnit).toMatchObject({ settled: false });
+    expect(magnitudeOf(sweep)[30]).toBeCloseTo((m[30] ?? 0) / 10, 5);
+  });
+  it('are not called named when only one part of a pair is', () => {
+    const { reading } = read(`f;Re\n${table([f, real], ';')}`);
+    expect(reading.columns).toEqual(['frequency', 'magnitude']);
+    expect(reading.guesses.columns?.settled).toBe(false);
+  });
+  it('read two-byte text without a byte order mark', () => {
+    const wide = new Uint8Array(Uint16Array.from(table([f, m, phaseDeg]), (char) => char.charCodeAt(0)).buffer);
+    const { reading } = readSweep(wide, { fileName: '' });
+    expect(reading).toMatchObject({ encoding: 'utf-16le', rows: 60 });
+  });
+  it('meet a character beyond plain ones long after the first', () => {
+    const rows = table([f, m], ';').repeat(60).trimEnd().split('\n');
+    rows[3000] = `${rows[3000]}\u00a0`;
+    rows[3001] = `# 20 \u00b0C`;
+    const { reading } = read(rows.join('\n'));
+    expect(reading.encoding).toBe('utf-8');
+    expect(reading.rows).toBe(3599);
+    expect(reading.comments).toEqual(['20 \u00b0C']);
+  });
+});
+
 describe('columns with names', () => {
   it.each([
     [

@@ -14,7 +14,6 @@ export interface ColumnsGuess {
   readonly rivalDeg?: number | undefined; // the next best sense
   readonly magnitudeUnit?: 'ohm' | 'dB' | undefined; // where the data chose it
   readonly phaseUnit?: 'degree' | 'radian' | undefined;
-  readonly steady: boolean; // the frequency column rises or falls throughout
 }
 
 /** Decides what each column holds: by its name where it has one, by the data otherwise. Undefined: no two columns of numbers. */
@@ -36,11 +35,10 @@ export function guessColumns(
   const { first, second } = pairOf(rest, (kind) => named(kind).filter((i) => rest.includes(i)));
   const kinds: ColumnKind[] = guess.shape.isNumber.map(() => 'ignore');
   kinds[frequency] = 'frequency';
-  const steady = turns(sampleColumn(guess, frequency)) === 0;
-  const because = named('frequency').length > 0 && meanings[first]?.kind ? 'named' : 'data';
+  const because = () => (kinds.every((kind, i) => kind === 'ignore' || meanings[i]?.kind === kind) ? 'named' : 'data');
   if (second === undefined) {
     kinds[first] = 'magnitude';
-    return { kinds, because, steady };
+    return { kinds, because: because() };
   }
   const senses = weigh(guess, [frequency, first, second], [meanings[first] ?? {}, meanings[second] ?? {}], told);
   const best = senses[0];
@@ -49,7 +47,7 @@ export function guessColumns(
   kinds[first] = a;
   kinds[second] = b;
   const { magnitudeUnit, phaseUnit, misfitDeg } = best;
-  return { kinds, because, steady, misfitDeg, rivalDeg: senses[1]?.misfitDeg, magnitudeUnit, phaseUnit };
+  return { kinds, because: because(), misfitDeg, rivalDeg: senses[1]?.misfitDeg, magnitudeUnit, phaseUnit };
 }
 
 /** The two columns that make up the impedance: named ones if there are, else the first two beside the frequency. */

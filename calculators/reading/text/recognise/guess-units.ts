@@ -43,7 +43,7 @@ export function guessUnits(
   };
   return {
     frequency: frequencyUnit(guess, at('frequency'), evidence(at('frequency')), overrides.frequencyUnit),
-    magnitude: magnitudeUnit(evidence(at('magnitude', 'real')), columns, overrides.magnitudeUnit),
+    magnitude: magnitudeUnit(guess, evidence(at('magnitude', 'real')), columns, overrides.magnitudeUnit),
     phase: phaseUnit(evidence(at('phase')), columns, overrides.phaseUnit),
   };
 }
@@ -75,6 +75,7 @@ function frequencyUnit(
 }
 
 function magnitudeUnit(
+  guess: DialectGuess,
   evidence: Evidence | undefined,
   columns: ColumnsGuess,
   given?: Reading['magnitudeUnit'],
@@ -93,6 +94,11 @@ function magnitudeUnit(
   }
   if (columns.magnitudeUnit === 'dB')
     return { unit: 'dB', guess: guessed(0.8, false, words.levelByPhase), extraExponent: 0 };
+  const magnitude = columns.kinds.indexOf('magnitude');
+  const values = magnitude < 0 ? [] : sampleColumn(guess, magnitude);
+  if (values.filter((value) => value < 0).length > 0.02 * values.length) {
+    return { unit: 'dB', guess: guessed(0.7, false, words.levelBelowZero), extraExponent: 0 };
+  }
   return { unit: 'ohm', guess: guessed(0.9, false, words.ohmUnnamed), extraExponent: 0 };
 }
 

@@ -16,6 +16,7 @@ export interface Layout {
 }
 
 const COMMENTS_MOST = 200;
+const HEADER_LINES_MOST = 100_000;
 
 /** Whether a line's fields are those of the shape: as many, and numbers (or NaN) where the others have numbers. */
 export function fitsShape(fields: readonly Field[], shape: Shape): boolean {
@@ -32,7 +33,7 @@ export function findLayout(text: Characters, guess: DialectGuess, toldLines?: nu
   const passed: string[] = [];
   let start = 0;
   let count = 0;
-  while (start < codes.length) {
+  while (start < codes.length && count <= HEADER_LINES_MOST) {
     const end = lineEnd(codes, start, codes.length);
     const isData = toldLines === undefined ? startsData(text, start, end, guess) : count >= toldLines;
     if (isData) return { ...headings(passed, guess), headerLines: count, dataStart: start };

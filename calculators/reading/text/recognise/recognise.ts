@@ -74,7 +74,7 @@ function chooseColumns(
     refuseColumns(overrides.columns, guess.shape, overrides);
     const kinds = guess.shape.isNumber.map((_, i) => overrides.columns?.[i] ?? 'ignore');
     const { misfitDeg, rivalDeg, magnitudeUnit, phaseUnit } = senseOf(guess, kinds, meanings, overrides);
-    return { kinds, because: 'custom', steady: true, misfitDeg, rivalDeg, magnitudeUnit, phaseUnit };
+    return { kinds, because: 'custom', misfitDeg, rivalDeg, magnitudeUnit, phaseUnit };
   }
   const columns = guessColumns(guess, meanings, overrides);
   if (!columns)
