@@ -20,6 +20,8 @@ const shownHz = async (page: Page): Promise<[number, number]> =>
 async function open(page: Page, query = ''): Promise<{ x: number; y: number; width: number; height: number }> {
   await page.goto(`${site.url}?points=600&${query}`);
   await expect(page.locator('.chart-drawing svg text').first()).toBeVisible();
+  await expect(page.getByRole('button', { name: 'Fit all' })).toBeVisible(); // the chart listens from here on
+  await page.evaluate(() => new Promise((done) => requestAnimationFrame(() => requestAnimationFrame(done))));
   const box = await drawing(page).boundingBox();
   if (!box) throw new Error('no chart');
   return box;
@@ -337,6 +339,16 @@ test.describe('by touch', () => {
     await touch(cdp, 'touchEnd', []);
     await expect.poll(() => page.evaluate(() => window.scrollY)).toBeGreaterThan(40);
     expect((await state(page)).cursorAHz).toBe(set.cursorAHz);
+  });
+
+  test('a long press lifted without sliding opens the menu of that place', async ({ page }) => {
+    const box = await open(page, 'height=460');
+    const cdp = await page.context().newCDPSession(page);
+    await touch(cdp, 'touchStart', [[200, box.y + 220]]);
+    await page.waitForTimeout(600);
+    await touch(cdp, 'touchEnd', []);
+    await page.getByRole('menuitem', { name: 'Note here' }).tap();
+    await expect(page.getByTestId('log')).toContainText('note ');
   });
 
   test('a tap on an axis opens its values, and buttons step the cursor', async ({ page }) => {

@@ -8,7 +8,7 @@ import type { PathPrimitive, Primitive, Stroke } from '../primitives.js';
 import type { AxisScale } from '../scales/axis-scale.js';
 
 /** Bands, lines and their marks, one clip per strip. */
-const MODEL_DASH = [6, 3];
+const MODEL_DASH = [4, 6]; // more gap than line: the sweep's own colour shows through
 const DIMMED = 0.35;
 const RAMP_DIMMED = 0.45;
 const BAND_OPACITY = { limits: 0.12, uncertainty: 0.16 } as const;

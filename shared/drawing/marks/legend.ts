@@ -88,7 +88,7 @@ function otherSample(theme: ChartTheme, { kind, x, y }: LegendEntry): Primitive[
           y1: y,
           x2: x + SAMPLE_WIDTH,
           y2: y,
-          stroke: { color: theme.ink, width: 1.25, dash: [6, 3] },
+          stroke: { color: theme.ink, width: 1.25, dash: [4, 6] },
         },
       ];
   }

@@ -45,7 +45,7 @@ export function attachTouch(options: GestureOptions): () => void {
   const cancel = () => gesture.cancel();
   root.addEventListener('touchstart', start, { passive: false });
   root.addEventListener('touchmove', move, { passive: false });
-  root.addEventListener('touchend', end);
+  root.addEventListener('touchend', end, { passive: false });
   root.addEventListener('touchcancel', cancel);
   return () => {
     gesture.cancel();
@@ -130,9 +130,13 @@ class TouchGesture {
       this.view.store.settle({}, 'cursor');
       this.options.onCursorMoved();
       if (this.hasMoved) return;
+      if (event.cancelable) event.preventDefault(); // else the click that follows lands on what just opened
       if (finger.isLongPress) this.options.onMenu(snapped(this.view, hzAt(this.view, finger.start.x)), finger.start);
       else if (isWorkshop()) this.tap(finger.start);
-    } else if (!this.hasMoved) this.tap(finger.start);
+    } else if (!this.hasMoved) {
+      if (targetAt(this.view, finger.start, FINGER_PX).kind === 'axis' && event.cancelable) event.preventDefault();
+      this.tap(finger.start);
+    }
   }
 
   cancel(): void {
