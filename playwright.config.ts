@@ -8,8 +8,8 @@ export default defineConfig({
   outputDir: 'test-results',
   workers: 1,
   forbidOnly: true,
-  timeout: 60_000,
-  expect: { timeout: 10_000 },
+  timeout: 120_000, // room for a slow machine: tests assert what happens, not how fast
+  expect: { timeout: 20_000 },
   use: {
     baseURL: process.env.HUMMOCK_E2E_URL,
     locale: 'en-GB',
