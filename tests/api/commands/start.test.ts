@@ -41,11 +41,12 @@ process.once('SIGTERM', () => process.exit(0));
 function makeCheckout(folder: string): string {
   mkdirSync(join(folder, 'server'), { recursive: true });
   mkdirSync(join(folder, 'src'));
-  for (const name of ['scripts', 'package.json', 'package-lock.json', 'tsconfig.json', 'vite.config.ts']) {
+  for (const name of ['scripts', 'package.json', 'package-lock.json', 'tsconfig.json']) {
     cpSync(name, join(folder, name), { recursive: true });
   }
   symlinkSync(resolve('node_modules'), join(folder, 'node_modules'));
   writeFileSync(join(folder, 'server/main.ts'), SMALL_SERVER);
+  writeFileSync(join(folder, 'vite.config.ts'), 'export default {};\n');
   writeFileSync(join(folder, 'src/main.ts'), 'export {};\n');
   writeFileSync(join(folder, 'index.html'), '<script type="module" src="/src/main.ts"></script>\n');
   return folder;
