@@ -40,14 +40,9 @@ export type RoleInputs = Readonly<Record<string, readonly RoleInput[]>>;
 export interface RunContext {
   /** Tells how far the work is: done of total, and what is in hand. Cheap: call it freely. */
   progress(done: number, total: number, label?: string): void;
-  /** Called between steps of long work; a host that has to end the run throws Stopped here. */
+  /** Called between steps of long work; a host that has to end the run throws here. */
   checkpoint(): void;
   readonly seed: number; // for whatever is random: the same seed gives the same digits
-}
-
-/** The run was ended on purpose: nothing to report. */
-export class Stopped extends Error {
-  override readonly name = 'Stopped';
 }
 
 export interface CalculatorDefinition<Settings extends z.ZodType = z.ZodType> {
