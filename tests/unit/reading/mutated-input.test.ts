@@ -120,6 +120,10 @@ describe('injured files', () => {
     ['comments only', '# 10 20\n'.repeat(200_000)],
     ['a heading on every second line', 'f Z\n10 5\n'.repeat(100_000)],
     ['brackets without end', `${'('.repeat(200_000)}\n`],
+    ['a table with many comments behind it', `${'10 5\n11 6\n'.repeat(400)}${'# x\n'.repeat(300_000)}`],
+    ['a table with millions of blank lines behind it', `${'10 5\n11 6\n'.repeat(400)}${'\n'.repeat(2_000_000)}`],
+    ['numbers too large on every second line', '10 5e999\n\n'.repeat(200_000)],
+    ['rows that never look alike', Array.from({ length: 30_000 }, (_, i) => '7 '.repeat(i % 50)).join('\n')],
     ['separators only', ';;;;\n'.repeat(200_000)],
     ['numbers parted by every separator in turn', '1,2;3\t4 5\n'.repeat(100_000)],
   ])('do not hold up the reader: %s', (_, text) => {

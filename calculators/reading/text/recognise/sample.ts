@@ -9,6 +9,7 @@ export interface Line {
 const LINES_MOST = 600;
 const FROM_THE_TOP = 300;
 const LINE_LENGTH_MOST = 4096; // longer lines are looked at this far
+const PLACE_LENGTH_MOST = 16_384; // how far a place is searched for a line that is no comment
 
 /**
  * The lines on which the dialect is decided, without blank lines and sure comments: all of a short text; of a long one the
@@ -28,7 +29,7 @@ export function sampleLines(codes: Uint8Array): Line[] {
   for (const place of places.sort((a, b) => a - b)) {
     const inLine = Math.max(Math.floor(place), sample.at(-1)!.end);
     const start = nextLine(codes, lineEnd(codes, inLine, codes.length), codes.length);
-    sample.push(...collect(codes, start, codes.length, 1));
+    sample.push(...collect(codes, start, Math.min(codes.length, start + PLACE_LENGTH_MOST), 1));
   }
   return sample;
 }

@@ -104,12 +104,24 @@ class RowScan {
 
   private takeSlowly(): void {
     const { codes } = this.text;
+    if (this.passBlankLines(codes)) return;
     const end = lineEnd(codes, this.position, codes.length);
     const at = { start: this.position, end, line: this.line, isLast: end >= codes.length };
     slowRow(this.text, this.plan, this.table, at);
     this.position = nextLine(codes, end, codes.length);
     this.line += 1;
     startRun(this.table, this.line);
+  }
+
+  private passBlankLines(codes: Uint8Array): boolean {
+    const start = this.position;
+    const stop = Math.min(codes.length, start + STRIDE_MOST);
+    while (this.position < stop && isLineEnd(codes[this.position]!)) {
+      this.position = nextLine(codes, this.position, codes.length);
+      this.line += 1;
+    }
+    if (this.position > start) startRun(this.table, this.line);
+    return this.position > start;
   }
 
   /** Takes what plain rows follow, as long as there is room; whether there were any. */

@@ -81,8 +81,15 @@ export function startRun(table: Table, line: number): void {
 }
 
 /** The line in which a row stands, counted from 1. */
-export function lineOf(table: Table, row: number): number {
-  const run = table.runs.findLast((candidate) => candidate.row <= row);
+export function lineOf({ runs }: Table, row: number): number {
+  let low = 0;
+  let high = runs.length - 1;
+  while (low < high) {
+    const middle = (low + high + 1) >> 1;
+    if (runs[middle]!.row <= row) low = middle;
+    else high = middle - 1;
+  }
+  const run = runs[low];
   return run ? run.line + row - run.row : 0;
 }
 
