@@ -9,9 +9,13 @@ function isWorthRetrying(failureCount: number, error: Error): boolean {
   return error.code === 'offline' || error.code === 'not-ready';
 }
 
+/**
+ * Without a connection a query is still tried once, as `/try` needs none; one that needs it waits for the next one
+ * and fails nothing on the screen. Changes are never held back in secret: they are sent, or said to be refused.
+ */
 export const queryClient = new QueryClient({
   defaultOptions: {
-    queries: { retry: isWorthRetrying, staleTime: 30_000, refetchOnWindowFocus: true },
-    mutations: { retry: false },
+    queries: { networkMode: 'offlineFirst', retry: isWorthRetrying, staleTime: 30_000, refetchOnWindowFocus: true },
+    mutations: { networkMode: 'always', retry: false },
   },
 });

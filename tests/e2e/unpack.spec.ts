@@ -243,6 +243,33 @@ test('Unpack with files in it is accessible in both themes and narrow windows', 
   await expectGoodScreen(page);
 });
 
+test('the screens of a stored sweep and of an item are accessible in both themes and narrow windows', async ({
+  page,
+}) => {
+  test.slow();
+  const project = await openUnpack(page);
+  await chooser(page).setInputFiles(`${DIALECTS}/tab-plain.txt`);
+  await page.getByLabel(/^Item/).selectOption('new');
+  await page.getByLabel('Name of the new item').fill('Mid-woofer 1');
+  await page.getByRole('button', { name: 'Make the item' }).click();
+  await expect(page.getByLabel(/^Item/)).toContainText('Mid-woofer 1');
+  await page.getByRole('button', { name: 'Add 1 sweep' }).click({ timeout: 20_000 });
+  await expect(page).toHaveURL(/\/sheet\//, { timeout: 60_000 });
+  await page.goto(project);
+  await expect(page.getByRole('img', { name: 'Shape of the impedance of tab-plain' })).toBeVisible();
+  await expectGoodScreen(page);
+  await page.getByRole('region', { name: 'Ledger' }).getByRole('link', { name: 'tab-plain' }).click();
+  await expect(page.getByRole('heading', { name: 'First lines of the file' })).toBeVisible({ timeout: 20_000 });
+  for (const tab of ['What it is', 'Facts', 'Reading rule', 'Revisions']) {
+    await page.getByRole('tab', { name: tab }).click();
+    await expectGoodScreen(page);
+  }
+  await page.goto(project);
+  await page.getByRole('region', { name: 'Items' }).getByRole('link', { name: 'Mid-woofer 1' }).click();
+  await expect(page.getByRole('heading', { name: 'Mid-woofer 1', level: 1 })).toBeVisible();
+  await expectGoodScreen(page);
+});
+
 test('files become sweeps by keyboard alone', async ({ page }) => {
   await openUnpack(page);
   const choosing = page.waitForEvent('filechooser');
@@ -257,4 +284,26 @@ test('files become sweeps by keyboard alone', async ({ page }) => {
   }
   await page.keyboard.press('Enter');
   await expect(page).toHaveURL(/\/sheet\//, { timeout: 60_000 });
+});
+
+test('without an account and without a connection, files become curves that are there again after a reload', async ({
+  page,
+  context,
+}) => {
+  const complaints = complaintsOf(page);
+  await page.goto('/');
+  await page.evaluate(async () => {
+    await navigator.serviceWorker.ready;
+    while (!navigator.serviceWorker.controller) await new Promise((resolve) => setTimeout(resolve, 50));
+  });
+  await context.setOffline(true);
+  await chooser(page).setInputFiles(`${DIALECTS}/comma-header.csv`);
+  await expect(page).toHaveURL(/\/try$/);
+  await expect(file(page, 'comma-header.csv')).toContainText(/Ready|Needs a look/, { timeout: 20_000 });
+  await page.getByRole('button', { name: 'Add 1 sweep' }).click();
+  const ledger = page.getByRole('region', { name: 'Ledger' });
+  await expect(ledger.getByText('comma-header')).toBeVisible({ timeout: 20_000 });
+  await page.reload();
+  await expect(ledger.getByText('comma-header')).toBeVisible({ timeout: 20_000 });
+  expect(complaints).toEqual([]);
 });

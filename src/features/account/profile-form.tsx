@@ -1,4 +1,5 @@
 import { zodResolver } from '@hookform/resolvers/zod';
+import { useState } from 'react';
 import { useForm } from 'react-hook-form';
 import { z } from 'zod';
 import type { Me } from '../../../shared/contracts/account.js';
@@ -14,10 +15,12 @@ const NameSchema = z.strictObject({ name: z.string().trim().min(1).max(80) });
 
 export function ProfileForm({ me }: { me: Me }) {
   const form = useForm({ resolver: zodResolver(NameSchema, { error: schemaWords }), defaultValues: { name: me.name } });
-  const { errors, isSubmitting, isSubmitSuccessful, isDirty } = form.formState;
+  const [savedName, setSavedName] = useState<string>();
+  const { errors, isSubmitting } = form.formState;
   const save = async ({ name }: { name: string }) => {
     const saved = await updateMe({ name });
-    form.reset({ name: saved.name }, { keepIsSubmitSuccessful: true });
+    form.reset({ name: saved.name });
+    setSavedName(saved.name);
   };
   const submit = form.handleSubmit((input) => save(input).catch(showServerErrors(form)));
   return (
@@ -38,7 +41,7 @@ export function ProfileForm({ me }: { me: Me }) {
       <div className="flex items-center gap-3">
         <SubmitButton isBusy={isSubmitting}>{text.common.save}</SubmitButton>
         <span role="status" className="text-soft">
-          {isSubmitSuccessful && !isDirty && text.account.youSaved}
+          {savedName !== undefined && savedName === form.watch('name') && text.account.youSaved}
         </span>
       </div>
     </form>

@@ -76,7 +76,7 @@ function AddFigure({ item, onAdd }: { item: Item; onAdd: (published: Item['publi
   };
   return (
     <form
-      className="grid max-w-xl items-start gap-3 sm:grid-cols-[2fr_1.3fr_1fr_auto]"
+      className="grid max-w-xl items-start gap-3 sm:grid-cols-[2fr_1.3fr_1.2fr_auto]"
       onSubmit={(event) => {
         event.preventDefault();
         add();
@@ -92,7 +92,7 @@ function AddFigure({ item, onAdd }: { item: Item; onAdd: (published: Item['publi
         }}
       />
       <NumberField key={id} label={text.project.value} unit={unit} value={value} onValue={setValue} />
-      <NumberField label={text.project.tolerance} unit="1" value={tolerance} onValue={setTolerance} isOptional />
+      <NumberField label={text.project.tolerance} unit="1" value={tolerance} onValue={setTolerance} />
       <Button type="submit" className="sm:mt-6">
         {text.project.addFigure}
       </Button>

@@ -6,7 +6,6 @@ import type { SweepRow } from '../../../shared/contracts/sweep.js';
 import { text } from '../../../shared/text.js';
 import { MiniCurve } from '../../components/chart/mini-curve.js';
 import { StatusWord } from '../../components/status-word.js';
-import { When } from '../../components/when.js';
 import { useProjectStore } from '../../lib/project-store/store-context.js';
 import { pointsQuery } from '../../lib/project-store/store-queries.js';
 import { shownQuantity, shownRange } from '../../lib/quantity-words.js';
@@ -71,11 +70,8 @@ export function SweepTable({ projectId, sweeps, itemNames, chosen, onChoose }: S
             <th scope="col" className="hidden py-2 pe-3 text-start sm:table-cell">
               {columns.range}
             </th>
-            <th scope="col" className="hidden py-2 pe-3 text-start lg:table-cell">
+            <th scope="col" className="hidden py-2 text-start xl:table-cell">
               {columns.findings}
-            </th>
-            <th scope="col" className="hidden py-2 text-end lg:table-cell">
-              {columns.added}
             </th>
           </tr>
         </thead>
@@ -128,7 +124,7 @@ interface RowProps extends Pick<SweepTableProps, 'projectId' | 'onChoose'> {
   itemName: string | undefined;
 }
 function Row({ projectId, sweep, onChoose, rowIndex, isChosen, itemName }: RowProps) {
-  const { id, name, revision, createdAt } = sweep;
+  const { id, name, revision } = sweep;
   const { minFrequencyHz, maxFrequencyHz, points, hasPhase, findings } = revision;
   return (
     <tr aria-rowindex={rowIndex} className={isChosen ? 'border-b border-line bg-heather-wash' : 'border-b border-line'}>
@@ -144,7 +140,10 @@ function Row({ projectId, sweep, onChoose, rowIndex, isChosen, itemName }: RowPr
         </label>
       </td>
       <th scope="row" className="py-2 pe-3 text-start font-normal">
-        <Link to={`/p/${projectId}/sweep/${id}`} className="py-0.5 font-medium break-all text-heather underline">
+        <Link
+          to={`/p/${projectId}/sweep/${id}`}
+          className="py-0.5 font-medium [overflow-wrap:anywhere] text-heather underline"
+        >
           {name}
         </Link>
         <span className="block text-note text-soft">{conditionWords(sweep)}</span>
@@ -161,11 +160,8 @@ function Row({ projectId, sweep, onChoose, rowIndex, isChosen, itemName }: RowPr
           {hasPhase ? '' : `, ${text.project.noPhase}`}
         </span>
       </td>
-      <td className="hidden py-2 pe-3 lg:table-cell">
+      <td className="hidden py-2 whitespace-nowrap xl:table-cell">
         <Checks findings={findings} />
-      </td>
-      <td className="hidden py-2 text-end text-note text-soft lg:table-cell">
-        <When iso={createdAt} />
       </td>
     </tr>
   );

@@ -68,7 +68,10 @@ export function ReadAgain({ sweep, aside }: ReadAgainProps) {
   );
   return (
     <div className="grid gap-6 lg:grid-cols-[minmax(0,1fr)_22rem]">
-      <SweepPreview entry={entry} />
+      <section aria-label={text.unpack.previewTitle} className="min-w-0">
+        <h2 className="sr-only">{text.unpack.previewTitle}</h2>
+        <SweepPreview entry={entry} />
+      </section>
       {aside ? aside(ruleForm) : ruleForm}
     </div>
   );
