@@ -233,6 +233,23 @@ describe('calculate jobs', () => {
     child.stdin.end();
     expect(await ended).toBe(0);
   });
+  it('fits every driver of the simulated set, one line each, all finite', async () => {
+    const truth = parsed(readFileSync('tests/fixtures/driver-free-air/truth.json', 'utf8'));
+    const cases: { id: string; files: { name: string }[] }[] = truth.cases;
+    const jobs = cases.map(({ id, files }) => ({
+      id,
+      calculator: 'driver-fit',
+      inputs: [{ role: 'free-air', file: resolve('tests/fixtures/driver-free-air', files[0]?.name ?? '') }],
+    }));
+    const { status, out } = await calculate(['jobs', writeJobs('drivers.ndjson', jobs)]);
+    expect(status).toBe(0);
+    const answers = lines(out);
+    expect(answers.map(({ id }) => id)).toEqual(cases.map(({ id }) => id));
+    for (const { figures } of answers) {
+      const fs = figures.find(({ id }: { id: string }) => id === 'fs');
+      expect(Number.isFinite(fs.value)).toBe(true);
+    }
+  });
   it('takes jobs from standard input and finds files beside the file of jobs', async () => {
     writeFileSync(join(folder, 'beside.txt'), readFileSync(join(dialects, 'tab-plain.txt')));
     const job = {

@@ -79,7 +79,7 @@ interface Sense {
 const SENSES: readonly Omit<Sense, 'misfitDeg'>[] = [
   { pair: 'magnitude+phase', magnitudeUnit: 'ohm', phaseUnit: 'degree', penaltyDeg: 0 },
   { pair: 'magnitude+phase', magnitudeUnit: 'ohm', phaseUnit: 'radian', penaltyDeg: 2 },
-  { pair: 'real+imaginary', penaltyDeg: 2 },
+  { pair: 'real+imaginary', penaltyDeg: 1 },
   { pair: 'magnitude+phase', magnitudeUnit: 'dB', phaseUnit: 'degree', penaltyDeg: 4 },
   { pair: 'magnitude+phase', magnitudeUnit: 'dB', phaseUnit: 'radian', penaltyDeg: 6 },
   { pair: 'phase+magnitude', magnitudeUnit: 'ohm', phaseUnit: 'degree', penaltyDeg: 4 },
