@@ -9,7 +9,7 @@ import type { Bench, Measured } from './bench.js';
 import { ScipyProcess } from './scipy-process.js';
 
 const ROWS = 1_000_000;
-const ROUNDS = 7; // ours and theirs in turn, so that both meet the same machine
+const ROUNDS = 15; // ours and theirs in turn, so that both meet the same machine
 const BAR = 1.1; // times faster than numpy.loadtxt
 
 interface Source {
@@ -87,7 +87,6 @@ async function compare(source: Source, numpy: ScipyProcess): Promise<Measured[]>
     if (answer.rows !== ROWS) throw new Error(`numpy.loadtxt read ${answer.rows} of ${ROWS} rows`);
     theirs.push(answer.ms);
   }
-  if (process.env.SHOW) console.log(ours.map(Math.round), theirs.map(Math.round));
   const [our, their] = [quantile(ours, 0.5), quantile(theirs, 0.5)];
   const note = `${our.toFixed(0)} ms (first ${ours[0]?.toFixed(0)}), numpy.loadtxt ${their.toFixed(0)} ms, medians of ${ROUNDS}`;
   return [
