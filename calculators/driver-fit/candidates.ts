@@ -41,7 +41,13 @@ export const modelName = (choice: ModelChoice): string => `${coilName(choice)} Â
 
 const FASTEST_RELAXATION = 2; // times fs: faster ones cannot be told from a stiffer spring
 const LARGEST_KAPPA = 4;
+const SMALLEST_KAPPA = 1e-3;
 const SLOWEST_RELAXATION = 0.01; // times fs
+/** Upper over lower bound. */
+export const RELAXATION_RANGE = {
+  kappa: LARGEST_KAPPA / SMALLEST_KAPPA,
+  tau: FASTEST_RELAXATION / SLOWEST_RELAXATION,
+} as const;
 
 /**
  * The problem of one model: Rss held at infinity where the choice leaves it out, and the relaxation kept where a sweep can
@@ -55,7 +61,7 @@ export function withinReach<Problem extends LeastSquaresProblem>(
 ): Problem {
   const bounded = (parameter: FitParameter): FitParameter => {
     if (parameter.id === 'Gss' && !hasRss) return { ...parameter, logScaled: false, lower: 0, held: true };
-    if (parameter.id === 'kappa') return { ...parameter, lower: 1e-3, upper: LARGEST_KAPPA };
+    if (parameter.id === 'kappa') return { ...parameter, lower: SMALLEST_KAPPA, upper: LARGEST_KAPPA };
     if (parameter.id !== 'tau') return parameter;
     const tauOf = (ratio: number): number => 1 / (2 * Math.PI * ratio * fsHz);
     return { ...parameter, lower: tauOf(FASTEST_RELAXATION), upper: tauOf(SLOWEST_RELAXATION) };
@@ -63,7 +69,7 @@ export function withinReach<Problem extends LeastSquaresProblem>(
   return { ...problem, parameters: problem.parameters.map(bounded) };
 }
 
-/** Plain least squares of one model, near enough to compare it: within a thousandth of its uncertainties. */
+/** Plain least squares of one model, near enough to compare it: within a hundredth of its uncertainties. */
 export function fitCandidate<Problem extends LeastSquaresProblem>(
   choice: ModelChoice,
   problem: Problem,
@@ -71,7 +77,7 @@ export function fitCandidate<Problem extends LeastSquaresProblem>(
   checkpoint: () => void,
 ): Candidate<Problem> {
   const first = withoutHeld(problem, start);
-  const fit = leastSquares(problem, first, { relativeOffset: 1e-3, maxIterations: 40, covariance: false, checkpoint });
+  const fit = leastSquares(problem, first, { relativeOffset: 1e-2, maxIterations: 20, covariance: false, checkpoint });
   const idle = new Set([...fit.atBound, ...fit.neverMoved]);
   return { ...choice, problem, fit, freeParameters: countOf(problem) - idle.size, squares: 2 * fit.cost };
 }

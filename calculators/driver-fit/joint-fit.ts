@@ -6,7 +6,14 @@ import {
 } from '../acoustics/joint-driver-problem.js';
 import { leastSquares } from '../numerics/least-squares.js';
 import type { LeastSquaresFit } from '../numerics/least-squares-problem.js';
-import { type Candidate, fitCandidate, type ModelChoice, withinReach, withoutHeld } from './candidates.js';
+import {
+  type Candidate,
+  fitCandidate,
+  type ModelChoice,
+  RELAXATION_RANGE,
+  withinReach,
+  withoutHeld,
+} from './candidates.js';
 import type { FitRows } from './fit-rows.js';
 import type { Measured } from './measured.js';
 import type { SingleFit } from './single-fit.js';
@@ -111,6 +118,18 @@ export function jointCandidate(
   return fitCandidate(choice, problem, jointStart(problem, freeAir, setup), checkpoint);
 }
 
+/**
+ * A relaxation that the data hardly tell still lies inside its bounds: as uncertain as an even spread of its logarithm
+ * between them, ln(upper/lower)/√12, about where the fit has it. It moves no value and keeps the covariance finite.
+ */
+function reachOf({ suspension }: ModelChoice, start: Readonly<Record<string, number>>): PriorKnowledge[] {
+  if (suspension !== 'relaxing') return [];
+  return (['kappa', 'tau'] as const).flatMap((id) => {
+    const value = start[id];
+    return value ? [{ id, value, uncertainty: (value * Math.log(RELAXATION_RANGE[id])) / Math.sqrt(12) }] : [];
+  });
+}
+
 /** The last fit: residuals in units of their own noise, with covariance. */
 export function finalFit(
   choice: ModelChoice,
@@ -118,7 +137,7 @@ export function finalFit(
   start: Readonly<Record<string, number>>,
   checkpoint: () => void,
 ): { problem: JointDriverProblem; fit: LeastSquaresFit } {
-  const problem = jointProblem(choice, setup);
+  const problem = jointProblem(choice, { ...setup, priors: [...setup.priors, ...reachOf(choice, start)] });
   const values = problem.parameters.map(({ id }, k) => start[id] ?? jointStart(problem, start, setup)[k] ?? 1);
   const fit = leastSquares(problem, withoutHeld(problem, values), {
     relativeOffset: 1e-4,

@@ -135,6 +135,8 @@ function directionsOf(outcome: Outcome, externals: Externals): Direction[] {
   );
 }
 
+const causeOfPrior = (id: string): Cause => (id === 'Re' ? 'dc-resistance' : id.startsWith('mass') ? 'mass' : 'noise');
+
 /** The covariance of the fit as independent directions: one for each prior, and the rest, which is noise. */
 function fitDirections({ fit, problem }: Outcome): Direction[] {
   const p = fit.values.length;
@@ -147,7 +149,7 @@ function fitDirections({ fit, problem }: Outcome): Direction[] {
     for (let i = 0; i < p; i += 1) {
       for (let j = 0; j < p; j += 1) rest[i * p + j] = (rest[i * p + j] ?? 0) - (values[i] ?? 0) * (values[j] ?? 0);
     }
-    directions.push({ cause: id === 'Re' ? 'dc-resistance' : 'mass', values, shifts: NO_SHIFTS });
+    directions.push({ cause: causeOfPrior(id), values, shifts: NO_SHIFTS });
   }
   return [
     ...directions,

@@ -3,9 +3,13 @@ import { finding, hertz, listed } from './finding.js';
 import { LEAST_POINTS_TO_FIT, type Measured } from './measured.js';
 import type { SingleFit } from './single-fit.js';
 
+const BOX_PROMINENCE = 0.25; // nepers of a second resonance: no fit of a single one could mean anything
+
 /** Whether a sweep can be fitted at all. */
 export const isUsable = ({ kind, data }: Measured): boolean =>
-  kind.kind === 'driver' && data.re.length >= LEAST_POINTS_TO_FIT;
+  kind.kind === 'driver' &&
+  data.re.length >= LEAST_POINTS_TO_FIT &&
+  kind.others.every(({ prominence }) => prominence < BOX_PROMINENCE);
 
 /** What the curve of each sweep says before anything is fitted. */
 export function curveFindings(measured: readonly Measured[]): Finding[] {

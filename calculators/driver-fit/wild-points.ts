@@ -16,6 +16,8 @@ const LIMIT = 6; // times the local noise per component: by chance once in 7e7 p
 const FLOOR = 2e-7; // relative: eight written digits
 const HARMONICS = 8;
 const HUM_WIDTH = 0.03; // relative distance from a harmonic
+const WIDEST_HUM = 0.06; // of a run, relative
+const LONGEST_RUN = 2;
 
 /**
  * Points that lie off the median of their neighbours in ρ = ln(Z/model) by more than six times the local noise: narrow
@@ -60,22 +62,46 @@ function distanceFromNeighbours({ re, im }: ComplexArray): Float64Array {
   return out;
 }
 
+/** Neighbouring rows that stand out together. */
+type Run = readonly number[];
+
+function runsOf(rows: readonly number[]): Run[] {
+  const runs: number[][] = [];
+  for (const row of rows) {
+    const last = runs.at(-1);
+    if (last && last.at(-1) === row - 1) last.push(row);
+    else runs.push([row]);
+  }
+  return runs;
+}
+
+/** A run of more than two rows is a feature of the curve, unless it is a narrow one at a harmonic of the mains. */
 function sorted(rows: readonly number[], frequencyHz: Float64Array): WildPoints {
+  const runs = runsOf(rows);
   const families = ([50, 60] as const).map((mainsHz) => {
-    const hits = rows.filter((row) => harmonicOf(frequencyHz[row] ?? 0, mainsHz) > 0);
-    const harmonics = [...new Set(hits.map((row) => harmonicOf(frequencyHz[row] ?? 0, mainsHz)))].sort((a, b) => a - b);
-    const isRun = hits.some((row) => hits.includes(row + 1));
-    const isHum = harmonics.length >= 2 || (harmonics.length === 1 && isRun && (harmonics[0] ?? 9) <= 3);
-    return { mainsHz, hits: isHum ? hits : [], harmonics };
+    const hits = runs.filter((run) => isHum(run, frequencyHz, mainsHz));
+    const harmonics = [...new Set(hits.map(([row = 0]) => harmonicOf(frequencyHz[row] ?? 0, mainsHz)))].sort(
+      (a, b) => a - b,
+    );
+    const isFundamentalRun = hits.some(
+      (run) => run.length > 1 && harmonicOf(frequencyHz[run[0] ?? 0] ?? 0, mainsHz) <= 3,
+    );
+    return { mainsHz, hits: harmonics.length >= 2 || isFundamentalRun ? hits : [], harmonics };
   });
   const best = families.reduce((a, b) => (b.hits.length > a.hits.length ? b : a));
-  if (best.hits.length === 0) return { ...NO_WILD_POINTS, wildRows: rows };
+  const wildRows = runs.filter((run) => run.length <= LONGEST_RUN && !best.hits.includes(run)).flat();
+  if (best.hits.length === 0) return { ...NO_WILD_POINTS, wildRows };
   return {
-    humRows: best.hits,
+    humRows: best.hits.flat(),
     humHz: best.harmonics.map((k) => k * best.mainsHz),
     mainsHz: best.mainsHz,
-    wildRows: rows.filter((row) => !best.hits.includes(row)),
+    wildRows,
   };
+}
+
+function isHum(run: Run, frequencyHz: Float64Array, mainsHz: number): boolean {
+  const [low, high] = [frequencyHz[run[0] ?? 0] ?? 0, frequencyHz[run.at(-1) ?? 0] ?? 0];
+  return high / low < 1 + WIDEST_HUM && run.every((row) => harmonicOf(frequencyHz[row] ?? 0, mainsHz) > 0);
 }
 
 /** Number of the harmonic a frequency lies on, 0 if on none. */
