@@ -3,7 +3,15 @@ import type { JointDriverProblem, PriorKnowledge } from '../acoustics/joint-driv
 import { logMisfit } from '../acoustics/sweep-term.js';
 import type { RunContext } from '../kit/calculator.js';
 import type { LeastSquaresFit } from '../numerics/least-squares-problem.js';
-import { type Candidate, type ModelChoice, modelChoices, modelName, type Ranked, ranked } from './candidates.js';
+import {
+  type Candidate,
+  FILE_ROUNDING,
+  type ModelChoice,
+  modelChoices,
+  modelName,
+  type Ranked,
+  ranked,
+} from './candidates.js';
 import {
   type FitOptions,
   type FreeAirModels,
@@ -129,11 +137,12 @@ function fitTogether(
     return jointCandidate(choice, setup, valuesOf(choice), checkpoint);
   });
   const rows = candidates[0]?.problem.activeCount ?? 1;
-  const first = ranked(candidates, rows)[0];
+  const rounding = sweeps.reduce((sum, sweep) => sum + rowsOf(sweep) * (FILE_ROUNDING / sweep.noise) ** 2, 0);
+  const first = ranked(candidates, rows, rounding)[0];
   if (!first) throw new Error('driver-fit has no model to try');
   const structures = sweeps.map((sweep, i) => structureOf(sweep, i, first.candidate));
   const effectiveRows = effectiveCount(sweeps, structures);
-  const ranking = ranked(candidates, effectiveRows);
+  const ranking = ranked(candidates, effectiveRows, rounding);
   const judged = sweeps.map((sweep, i) => withNoise(sweep, i, first.candidate, structures[i]));
   const finalSetup = { ...setup, sweeps: judged };
   const outcomes = ranking

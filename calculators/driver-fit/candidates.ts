@@ -90,17 +90,23 @@ export function withoutHeld({ parameters }: LeastSquaresProblem, start: ArrayLik
 const countOf = ({ parameters }: LeastSquaresProblem): number => parameters.filter(({ held }) => !held).length;
 
 const SAME_BIC = 1.5;
+export const FILE_ROUNDING = 1e-7; // relative: seven written digits
 
 /**
  * Best first, by BIC = N·ln(RSS/N) + k·ln N; AICc = N·ln(RSS/N) + 2k + 2k(k + 1)/(N − k − 1).
  * Sources: G. Schwarz, Ann. Statist. 6 (1978); C. M. Hurvich, C.-L. Tsai, Biometrika 76 (1989) (from memory).
  * N counts real residuals, or as many of them as are independent where the misfit is correlated. A model with a
- * parameter on its bound that does no better than a simpler one is that one again and carries no weight.
+ * parameter on its bound that does no better than a simpler one is that one again and carries no weight. Below
+ * `leastSquaresSum`, what is left is the rounding of the file, and the simplest model is the best.
  */
-export function ranked<C extends Candidate>(candidates: readonly C[], rows: number): Ranked<C>[] {
+export function ranked<C extends Candidate>(
+  candidates: readonly C[],
+  rows: number,
+  leastSquaresSum: number,
+): Ranked<C>[] {
   const scored = candidates.map((candidate) => {
     const k = candidate.freeParameters;
-    const likelihood = rows * Math.log(Math.max(candidate.squares, Number.MIN_VALUE) / rows);
+    const likelihood = rows * Math.log(Math.max(candidate.squares, leastSquaresSum) / rows);
     const correction = rows - k - 1 > 0 ? (2 * k * (k + 1)) / (rows - k - 1) : 0;
     return {
       candidate,

@@ -36,8 +36,10 @@ interface Reader {
   readonly boxMassId: string;
 }
 
-function readerOf({ parameters }: Outcome['problem']): Reader {
-  const at = new Map(parameters.map(({ id }, k) => [id, k]));
+/** A parameter that rests on a bound is not known: a mass that shifted nothing has no Mms to give. */
+function readerOf({ problem: { parameters }, fit }: Pick<Outcome, 'problem' | 'fit'>): Reader {
+  const known = parameters.map(({ id }, k) => [id, k] as const).filter(([id]) => !fit.atBound.includes(id));
+  const at = new Map(known);
   const named = (pattern: RegExp): string => parameters.find(({ id }) => pattern.test(id))?.id ?? '';
   return {
     read: (values, id) => {
@@ -51,11 +53,11 @@ function readerOf({ parameters }: Outcome['problem']): Reader {
 
 /** `heaviestKg`: the largest added mass, null without one. */
 export function numbersOf(
-  { problem, choice }: Pick<Outcome, 'problem' | 'choice'>,
+  { problem, choice, fit }: Pick<Outcome, 'problem' | 'choice' | 'fit'>,
   externals: Externals,
   heaviestKg: number | null,
 ): NumbersOf {
-  const reader = readerOf(problem);
+  const reader = readerOf({ problem, fit });
   const { read, alphaId, boxMassId } = reader;
   const ways = waysOf(problem, reader, externals);
   const point = pointImpedance(choice);

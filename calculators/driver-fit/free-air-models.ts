@@ -2,7 +2,15 @@ import { FREE_AIR } from '../acoustics/driver-impedance.js';
 import { driverSweepProblem } from '../acoustics/driver-sweep-problem.js';
 import type { SuspensionModel } from '../acoustics/suspension.js';
 import type { RunContext } from '../kit/calculator.js';
-import { type Candidate, fitCandidate, type ModelChoice, modelName, ranked, withinReach } from './candidates.js';
+import {
+  type Candidate,
+  FILE_ROUNDING,
+  fitCandidate,
+  type ModelChoice,
+  modelName,
+  ranked,
+  withinReach,
+} from './candidates.js';
 import { type FittedCurve, fitRows } from './fit-rows.js';
 import type { Measured } from './measured.js';
 import { type RoughFit, roughFit } from './rough-fit.js';
@@ -48,7 +56,8 @@ export function freeAirModels(measured: Measured, { choices, robust, context }: 
   for (let round = 0; ; round += 1) {
     const candidates = fitAll(measured, rough, near, known, { choices, robust, context });
     known = new Map(candidates.map((candidate) => [modelName(candidate), candidate.fit.values]));
-    const leader = ranked(candidates, candidates[0]?.problem.activeCount ?? 1)[0]?.candidate;
+    const rows = candidates[0]?.problem.activeCount ?? 1;
+    const leader = ranked(candidates, rows, rows * FILE_ROUNDING ** 2)[0]?.candidate;
     if (!leader) throw new Error('driver-fit has no model to try');
     const best = singleFit(measured, leader, rough, leader.fit.values, { robust, checkpoint });
     const isSettled = round === 1 || best.keep.every((flag, i) => flag === rough.keep[i]);
@@ -62,7 +71,8 @@ const FAR_BEHIND = 60; // of BIC: a weight of 1e-13
 
 function leftBehind(candidates: readonly Candidate[], { structure, rows }: SingleFit): LeftBehind[] {
   const total = (rows.data.hasPhase ? 2 : 1) * rows.counts.filter((count) => count > 0).length;
-  const ranking = ranked(candidates, Math.max(total / structure.pointsPerEffective, LEAST_EFFECTIVE));
+  const effective = Math.max(total / structure.pointsPerEffective, LEAST_EFFECTIVE);
+  const ranking = ranked(candidates, effective, total * FILE_ROUNDING ** 2);
   const least = Math.min(...ranking.map(({ bic }) => bic));
   return ranking
     .filter(({ bic }) => bic > least + FAR_BEHIND)

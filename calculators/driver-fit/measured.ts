@@ -1,3 +1,4 @@
+import { InputError } from '../../shared/errors.js';
 import { type SweepData, sweepData } from '../acoustics/sweep-term.js';
 import type { RoleInput, RoleInputs } from '../kit/calculator.js';
 import { hasPhase, magnitudeOf, type Sweep } from '../kit/sweep.js';
@@ -31,9 +32,11 @@ export function measuredSweeps(inputs: RoleInputs, settings: DriverFitSettings):
 
 function measuredSweep(role: Role, { sweep: whole, keys }: RoleInput, settings: DriverFitSettings): Measured[] {
   if (!whole) return [];
+  const sweep = settings.band ? insideBand(whole, settings.band) : whole;
+  checkLength(sweep, settings);
   return [
     {
-      ...curveOf(settings.band ? insideBand(whole, settings.band) : whole),
+      ...curveOf(sweep),
       role,
       massKg: numberOf(keys.mass) ?? 0,
       massUncertaintyKg: numberOf(keys.massUncertainty) ?? settings.massUncertainty ?? 0,
@@ -41,6 +44,17 @@ function measuredSweep(role: Role, { sweep: whole, keys }: RoleInput, settings: 
       volumeUncertaintyM3: numberOf(keys.volumeUncertainty) ?? settings.volumeUncertainty ?? 0,
     },
   ];
+}
+
+function checkLength({ name, frequencyHz }: Sweep, { band }: DriverFitSettings): void {
+  const { length } = frequencyHz;
+  if (length >= LEAST_POINTS_TO_FIT) return;
+  if (band) {
+    const message = `Only ${length} points of ${name} lie between ${band[0]} and ${band[1]} Hz; at least ${LEAST_POINTS_TO_FIT} are needed. Widen the band.`;
+    throw new InputError('bad-setting', message, 'band');
+  }
+  const message = `${name} has ${length} points; at least ${LEAST_POINTS_TO_FIT} are needed to fit a driver. Sweep with more.`;
+  throw new InputError('too-few-points', message, name);
 }
 
 type Curve = Pick<Measured, 'name' | 'sweep' | 'data' | 'magnitudeOhm' | 'kind'>;

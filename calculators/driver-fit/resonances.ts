@@ -1,5 +1,5 @@
 import { peaksOf } from '../numerics/peaks.js';
-import { median, runningMedian } from '../numerics/statistics.js';
+import { MAD_TO_SIGMA, median, runningMedian } from '../numerics/statistics.js';
 
 /** A hump of |Z| inside the sweep. */
 export interface Resonance {
@@ -10,11 +10,14 @@ export interface Resonance {
 export type CurveKind =
   | { readonly kind: 'driver'; readonly main: Resonance; readonly others: readonly Resonance[] }
   | { readonly kind: 'peak-outside-sweep'; readonly side: 'below' | 'above' }
+  | { readonly kind: 'phase-sign-flipped'; readonly main: Resonance }
   | { readonly kind: 'not-a-driver' };
 
 const BINS_PER_OCTAVE = 48; // a peak of Q 30 is still two bins wide
 const LEAST_PROMINENCE = 0.03; // nepers: smaller humps are noise or defects, not a driver's resonance
 const SECOND_PROMINENCE = 0.12; // nepers: what a box's second peak keeps at least
+const ABOVE_NOISE = 6; // times the noise of the filtered curve
+const MEDIAN_OF_THREE = 0.67; // standard deviation of the median of three normal values, in theirs
 
 /**
  * What the curve of |Z| is: one or more humps of ln|Z| after a median filter (common practice, no published source),
@@ -27,14 +30,16 @@ export function curveKind(
   imaginaryOhm?: Float64Array,
 ): CurveKind {
   const binned = medianBins(frequencyHz, magnitudeOhm);
-  const humps = prominentMaxima(binned)
+  const noise = ABOVE_NOISE * binned.noise;
+  const humps = prominentMaxima(binned, Math.max(LEAST_PROMINENCE, noise))
     .map((hump) => atHighestRow(hump, binned, frequencyHz, magnitudeOhm))
     .sort((a, b) => b.prominence - a.prominence);
   const [main, ...rest] = humps;
   if (main) {
+    if (imaginaryOhm && runsBackwards(main, frequencyHz, imaginaryOhm)) return { kind: 'phase-sign-flipped', main };
     const others = rest.filter(({ prominence, frequencyHz: f }) => {
       const ratio = Math.max(f, main.frequencyHz) / Math.min(f, main.frequencyHz);
-      return prominence > SECOND_PROMINENCE && ratio > 1.15 && ratio < 8;
+      return prominence > Math.max(SECOND_PROMINENCE, noise) && ratio > 1.15 && ratio < 8;
     });
     return { kind: 'driver', main, others };
   }
@@ -46,10 +51,11 @@ interface Binned {
   readonly lnZ: number[];
   readonly firstRow: number[];
   readonly lastRow: number[];
+  readonly noise: number; // σ of lnZ
 }
 
 function medianBins(frequencyHz: Float64Array, magnitudeOhm: Float64Array): Binned {
-  const binned: Binned = { lnF: [], lnZ: [], firstRow: [], lastRow: [] };
+  const binned: Omit<Binned, 'noise'> = { lnF: [], lnZ: [], firstRow: [], lastRow: [] };
   let row = 0;
   while (row < frequencyHz.length) {
     const bin = Math.floor(Math.log2(frequencyHz[row] ?? 1) * BINS_PER_OCTAVE);
@@ -64,13 +70,40 @@ function medianBins(frequencyHz: Float64Array, magnitudeOhm: Float64Array): Binn
     binned.lastRow.push(end);
     row = end + 1;
   }
-  return { ...binned, lnZ: Array.from(runningMedian(binned.lnZ, 1)) };
+  const noise = MEDIAN_OF_THREE * noiseOf(binned.lnZ);
+  return { ...binned, lnZ: Array.from(runningMedian(binned.lnZ, 1)), noise };
 }
 
-function prominentMaxima({ lnZ }: Binned): { bin: number; prominence: number }[] {
+function prominentMaxima({ lnZ }: Binned, least: number): { bin: number; prominence: number }[] {
   return peaksOf(lnZ)
-    .filter(({ prominence }) => prominence > LEAST_PROMINENCE)
+    .filter(({ prominence }) => prominence > least)
     .map(({ index, prominence }) => ({ bin: index, prominence }));
+}
+
+/** σ of ln|Z| from its second differences, robust: a resonance bends over many bins, noise over one. */
+function noiseOf(lnZ: readonly number[]): number {
+  const bends = lnZ.slice(2).map((value, i) => Math.abs(value - 2 * (lnZ[i + 1] ?? 0) + (lnZ[i] ?? 0)));
+  return bends.length === 0 ? 0 : (MAD_TO_SIGMA * median(bends)) / Math.sqrt(6);
+}
+
+/**
+ * A driver is inductive below its resonance and capacitive above it. Where the reactance runs the other way on both
+ * sides, within a factor of 1.6, the file counts capacitive phase as positive.
+ */
+function runsBackwards(
+  { frequencyHz: peakHz }: Resonance,
+  frequencyHz: Float64Array,
+  imaginaryOhm: Float64Array,
+): boolean {
+  let [below, above, size] = [0, 0, 0];
+  for (const [i, f] of frequencyHz.entries()) {
+    if (f < peakHz / 1.6 || f > peakHz * 1.6) continue;
+    const x = imaginaryOhm[i] ?? 0;
+    size += Math.abs(x);
+    if (f < peakHz) below += x;
+    else above += x;
+  }
+  return below < -0.1 * size && above > 0.1 * size;
 }
 
 function atHighestRow(

@@ -1,15 +1,13 @@
 import type { Finding } from '../../shared/output.js';
 import { finding, hertz, listed } from './finding.js';
-import { LEAST_POINTS_TO_FIT, type Measured } from './measured.js';
+import type { Measured } from './measured.js';
 import type { SingleFit } from './single-fit.js';
 
 const BOX_PROMINENCE = 0.25; // nepers of a second resonance: no fit of a single one could mean anything
 
 /** Whether a sweep can be fitted at all. */
-export const isUsable = ({ kind, data }: Measured): boolean =>
-  kind.kind === 'driver' &&
-  data.re.length >= LEAST_POINTS_TO_FIT &&
-  kind.others.every(({ prominence }) => prominence < BOX_PROMINENCE);
+export const isUsable = ({ kind }: Measured): boolean =>
+  kind.kind === 'driver' && kind.others.every(({ prominence }) => prominence < BOX_PROMINENCE);
 
 /** What the curve of each sweep says before anything is fitted. */
 export function curveFindings(measured: readonly Measured[]): Finding[] {
@@ -20,10 +18,6 @@ function kindFindings({ kind, name, role, data }: Measured): Finding[] {
   const { frequencyHz } = data.grid;
   const low = hertz(frequencyHz[0] ?? 0);
   const high = hertz(frequencyHz.at(-1) ?? 0);
-  if (data.re.length < LEAST_POINTS_TO_FIT) {
-    const message = `${name} has ${data.re.length} points inside the band; at least ${LEAST_POINTS_TO_FIT} are needed. Widen the band, or sweep with more points.`;
-    return [finding('not-a-driver', message)];
-  }
   if (kind.kind === 'not-a-driver') {
     const message = `${name} has no resonance between ${low} and ${high}: this looks like a part or a network. Check which sweep it is and whether the leads were on the driver.`;
     return [finding('not-a-driver', message)];
@@ -32,6 +26,10 @@ function kindFindings({ kind, name, role, data }: Measured): Finding[] {
     const end = kind.side === 'below' ? `below ${low}` : `above ${high}`;
     const message = `The resonance of ${name} lies ${end}, outside the sweep. Sweep again from about a third to three times the resonance at least.`;
     return [finding('peak-outside-sweep', message)];
+  }
+  if (kind.kind === 'phase-sign-flipped') {
+    const message = `The phase of ${name} runs the wrong way: capacitive below the resonance at ${hertz(kind.main.frequencyHz)}, inductive above it. Read the file again with its phase sign turned.`;
+    return [finding('phase-sign-flipped', message, { frequency: kind.main.frequencyHz })];
   }
   const [second] = kind.others;
   if (!second) return [];

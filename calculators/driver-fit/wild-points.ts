@@ -12,7 +12,8 @@ export const NO_WILD_POINTS: WildPoints = { humRows: [], humHz: [], mainsHz: nul
 
 const NEIGHBOURS = 5; // on each side
 const SPREAD_ROWS = 30; // on each side, for the local noise
-const LIMIT = 6; // times the local noise per component: by chance once in 7e7 points
+const LIMIT = 6.5; // times the local noise per component: by chance about once in some 100,000 points
+const QUIETEST = 0.9; // of the sweep's noise: a stretch that happens to be quieter makes no point wild
 const FLOOR = 2e-7; // relative: eight written digits
 const HARMONICS = 8;
 const HUM_WIDTH = 0.03; // relative distance from a harmonic
@@ -20,7 +21,7 @@ const WIDEST_HUM = 0.06; // of a run, relative
 const LONGEST_RUN = 2;
 
 /**
- * Points that lie off the median of their neighbours in ρ = ln(Z/model) by more than six times the local noise: narrow
+ * Points that lie off the median of their neighbours in ρ = ln(Z/model) by more than 6.5 times the local noise: narrow
  * enough to be no feature of a driver. Those at harmonics of 50 or 60 Hz are hum, the rest wild. Common practice, no published source.
  * Shapes: frequencyHz (n), misfit (n).
  */
@@ -31,10 +32,10 @@ export function wildPoints(frequencyHz: Float64Array, misfit: ComplexArray, hasP
   const overall = median(distance) * perMedian;
   const rows: number[] = [];
   for (let i = 0; i < n; i += 1) {
-    if ((distance[i] ?? 0) <= LIMIT * Math.max(0.5 * overall, FLOOR)) continue;
+    if ((distance[i] ?? 0) <= LIMIT * Math.max(QUIETEST * overall, FLOOR)) continue;
     const around = distance.subarray(Math.max(0, i - SPREAD_ROWS), Math.min(n, i + SPREAD_ROWS + 1));
     const local = median(around) * perMedian;
-    if ((distance[i] ?? 0) > LIMIT * Math.max(local, 0.5 * overall, FLOOR)) rows.push(i);
+    if ((distance[i] ?? 0) > LIMIT * Math.max(local, QUIETEST * overall, FLOOR)) rows.push(i);
   }
   return sorted(rows, frequencyHz);
 }
