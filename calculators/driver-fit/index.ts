@@ -1,12 +1,12 @@
 import type { Output } from '../../shared/output.js';
 import { defineCalculator } from '../kit/calculator.js';
-import { externalsOf } from './externals.js';
+import { externalsOf } from './derive/externals.js';
 import { figureList } from './figure-list.js';
+import { curveFindings, isUsable } from './findings/sweep-findings.js';
 import { measuredSweeps } from './measured.js';
 import { fittedOutput } from './output.js';
 import { roles } from './roles.js';
 import { settingsSchema } from './settings.js';
-import { curveFindings, isUsable } from './sweep-findings.js';
 import { unfittedOutput } from './unfitted-output.js';
 
 /** Thiele/Small parameters with their uncertainties, from a free-air sweep and whatever else is known of the driver. */

@@ -2,7 +2,7 @@ import { InputError } from '../../shared/errors.js';
 import { type SweepData, sweepData } from '../acoustics/sweep-term.js';
 import type { RoleInput, RoleInputs } from '../kit/calculator.js';
 import { hasPhase, magnitudeOf, type Sweep } from '../kit/sweep.js';
-import { type CurveKind, curveKind } from './resonances.js';
+import { type CurveKind, curveKind } from './fitting/resonances.js';
 import { roles } from './roles.js';
 import type { DriverFitSettings } from './settings.js';
 

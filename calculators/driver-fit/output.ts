@@ -1,25 +1,25 @@
 import type { Finding, Fit, Marker, Output, Table } from '../../shared/output.js';
 import type { RunContext } from '../kit/calculator.js';
-import { type BandResults, bandResults } from './bands.js';
-import { bootstrapped } from './bootstrap.js';
-import { budgetTable } from './budget-table.js';
-import { modelName } from './candidates.js';
-import { type Estimate, estimatesOf, isOfResonance, withResampling } from './estimates.js';
-import type { Externals } from './externals.js';
-import { figuresOf } from './figures.js';
-import { fitFindings } from './fit-findings.js';
-import { diameterFindings, loadFindings } from './load-findings.js';
+import { type Estimate, estimatesOf, isOfResonance, withResampling } from './derive/estimates.js';
+import type { Externals } from './derive/externals.js';
+import { figuresOf } from './derive/figures.js';
+import { withProfiles } from './derive/weak-parameters.js';
+import { fitFindings } from './findings/fit-findings.js';
+import { diameterFindings, loadFindings } from './findings/load-findings.js';
+import { wildFindings } from './findings/sweep-findings.js';
+import { type BandResults, bandResults } from './fitting/bands.js';
+import { bootstrapped } from './fitting/bootstrap.js';
+import { modelName } from './fitting/candidates.js';
 import type { Measured } from './measured.js';
-import { modelTable } from './model-table.js';
-import { firstLoadSteps, type NextStep, nextSteps, nextTable } from './next-measurement.js';
-import { sentenceOf } from './sentence.js';
+import { budgetTable } from './report/budget-table.js';
+import { modelTable } from './report/model-table.js';
+import { firstLoadSteps, type NextStep, nextSteps, nextTable } from './report/next-measurement.js';
+import { sentenceOf } from './report/sentence.js';
+import { threePoint } from './report/three-point.js';
+import { type NamedThreePoint, threePointMarkers, threePointTable } from './report/three-point-table.js';
+import { tracesOf } from './report/traces.js';
+import { waysTable } from './report/ways-table.js';
 import type { DriverFitSettings } from './settings.js';
-import { wildFindings } from './sweep-findings.js';
-import { threePoint } from './three-point.js';
-import { type NamedThreePoint, threePointMarkers, threePointTable } from './three-point-table.js';
-import { tracesOf } from './traces.js';
-import { waysTable } from './ways-table.js';
-import { withProfiles } from './weak-parameters.js';
 
 export interface Task {
   readonly measured: readonly Measured[]; // free air first; all with a resonance

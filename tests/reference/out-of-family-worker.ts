@@ -1,6 +1,6 @@
 import { parentPort } from 'node:worker_threads';
 import { driverFit } from '../../calculators/driver-fit/index.js';
-import { threePoint } from '../../calculators/driver-fit/three-point.js';
+import { threePoint } from '../../calculators/driver-fit/report/three-point.js';
 import { runCalculator } from '../../calculators/kit/run.js';
 import { studentQuantile } from '../../calculators/numerics/distributions.js';
 import type { Figure, Output } from '../../shared/output.js';

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { threePoint } from '../../../calculators/driver-fit/three-point.js';
+import { threePoint } from '../../../calculators/driver-fit/report/three-point.js';
 import { CHECK_COILS, checkDriver } from '../../reference/check-driver.js';
 import { complex, type DriverParts, impedanceOf, logFrequencies } from '../../reference/simulated-driver.js';
 
